@@ -1,0 +1,5 @@
+import { parentPort } from "node:worker_threads";
+
+// Vitest calls removeAllListeners when a worker ends; Deno 2.9.6 has the method but throws
+// "Not implemented" from it. Nothing listens any more at that point.
+if (parentPort) parentPort.removeAllListeners = () => parentPort!;
