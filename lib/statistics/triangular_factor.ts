@@ -1,0 +1,33 @@
+/** Householder triangularisation, in place: A = QR for a matrix of m rows and n columns, row-major,
+ * with Qᵀ applied to a right-hand side as well. Afterwards the upper triangle of `a` is R and the
+ * first n entries of `b` are the head of Qᵀb; the rest of `b` holds what R cannot reach.
+ *
+ * Source: A. S. Householder, J. ACM 5 (1958) 339; G. Golub, Numer. Math. 7 (1965) 206.
+ *
+ * @param a matrix, length m·n, overwritten
+ * @param b right-hand side, length m, overwritten
+ * @param m rows @param n columns, n ≤ m */
+export function triangularize(a: Float64Array, b: Float64Array, m: number, n: number): void {
+  for (let j = 0; j < n; j++) {
+    let norm = 0;
+    for (let i = j; i < m; i++) norm += a[i * n + j] * a[i * n + j];
+    norm = Math.sqrt(norm);
+    if (norm === 0) continue;
+    if (a[j * n + j] > 0) norm = -norm;
+    // v = x − norm·e₁, kept in column j; the reflection is I + v vᵀ / (norm · v₁).
+    const head = a[j * n + j] - norm;
+    a[j * n + j] = head;
+    const scale = 1 / (norm * head);
+    for (let k = j + 1; k < n; k++) {
+      let dot = 0;
+      for (let i = j; i < m; i++) dot += a[i * n + j] * a[i * n + k];
+      dot *= scale;
+      for (let i = j; i < m; i++) a[i * n + k] += dot * a[i * n + j];
+    }
+    let dot = 0;
+    for (let i = j; i < m; i++) dot += a[i * n + j] * b[i];
+    dot *= scale;
+    for (let i = j; i < m; i++) b[i] += dot * a[i * n + j];
+    a[j * n + j] = norm;
+  }
+}
