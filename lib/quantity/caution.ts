@@ -27,7 +27,7 @@ export class RefusedError extends RangeError {
   }
 }
 
-/** A caution as one line: `Caution (serious): …`. */
+/** A caution as one line: `Note: …`, `Caution: …` or `Serious caution: …`. */
 export function formatCaution(caution: Caution): string {
   const label = caution.severity === "note"
     ? "Note"

@@ -93,7 +93,7 @@ export class Estimate {
         `Cannot give an interval of level ${level}: write a number between 0 and 1, such as 0.95`,
       );
     }
-    const t = quantile((1 + level) / 2, this.degreesOfFreedom ?? Infinity);
+    const t = quantile((1 + level) / 2, Math.min(this.degreesOfFreedom ?? NORMAL, NORMAL));
     if (this.symmetricOn === "linear") {
       const half = t * this.standardError;
       return [this.value - half, this.value + half];
@@ -121,6 +121,7 @@ export class Estimate {
   /** Value and standard uncertainty by the GUM rule, with the unit. */
   toString(): string {
     const unit = this.unit === "1" ? "" : ` ${this.unit}`;
+    if (!Number.isFinite(this.value)) return `${formatNumber(this.value)}${unit}`;
     const known = Number.isFinite(this.standardError);
     if (!known) return `${formatNumber(this.value, 4)}${unit} (no standard error)`;
     if (this.standardError === 0) return `${formatNumber(this.value, 6)}${unit} (exact)`;
@@ -149,6 +150,10 @@ export class Estimate {
     return { "text/plain": this.toString() };
   }
 }
+
+/** Degrees of freedom at which Student's t is the normal distribution to 12 digits; the package's
+ * quantile fails above 1e15 and at infinity. */
+const NORMAL = 1e12;
 
 function finite(value: number): number | null {
   return Number.isFinite(value) ? value : null;

@@ -7,13 +7,10 @@
 export function formatNumber(value: number, digits = 4): string {
   if (!Number.isFinite(value)) return formatNonFinite(value);
   if (value === 0) return "0";
-  const rounded = Number(value.toPrecision(digits));
-  const exponent = decimalExponent(rounded);
-  if (exponent < -3 || exponent >= 6) {
-    const mantissa = rounded / 10 ** exponent;
-    return `${minus(mantissa.toFixed(Math.max(digits - 1, 0)))}×10${superscript(exponent)}`;
-  }
-  return minus(rounded.toFixed(Math.max(digits - 1 - exponent, 0)));
+  const [mantissa, power] = value.toExponential(digits - 1).split("e");
+  const exponent = Number(power);
+  if (exponent < -3 || exponent >= 6) return `${minus(mantissa)}×10${superscript(exponent)}`;
+  return minus(Number(`${mantissa}e${power}`).toFixed(Math.max(digits - 1 - exponent, 0)));
 }
 
 /** Value and standard uncertainty in text by the rule of the GUM (JCGM 100:2008, 7.2.6): two
@@ -24,17 +21,31 @@ export function formatNumber(value: number, digits = 4): string {
  * @param value the value
  * @param uncertainty its standard uncertainty, same unit; > 0 and finite */
 export function formatWithUncertainty(value: number, uncertainty: number): string {
-  const u = Number(uncertainty.toPrecision(2));
-  const last = decimalExponent(u) - 1;
-  const lead = value === 0 ? last + 1 : Math.max(decimalExponent(value), decimalExponent(u));
-  if (lead < -3 || lead >= 6 || last > 0) {
-    const scale = 10 ** -lead;
-    const places = Math.min(Math.max(lead - last, 0), 20);
-    const text = `${fixed(value * scale, places)} ± ${fixed(u * scale, places)}`;
-    return lead === 0 ? text : `(${text})×10${superscript(lead)}`;
-  }
-  const places = Math.min(Math.max(-last, 0), 20);
-  return `${fixed(value, places)} ± ${fixed(u, places)}`;
+  const last = decimalExponent(Number(uncertainty.toPrecision(2))) - 1;
+  const exponent = Math.max(roundedExponent(value, last), last + 1);
+  const scaled = exponent < -3 || exponent >= 6 || last > 0;
+  const scale = scaled ? exponent : 0;
+  const places = Math.min(Math.max(scale - last, 0), 100);
+  const text = `${fixed(shift(value, -scale), places)} ± ${
+    fixed(shift(uncertainty, -scale), places)
+  }`;
+  return scale === 0 ? text : `(${text})×10${superscript(scale)}`;
+}
+
+/** Exponent of the leading digit once a value is rounded at the place 10^last. */
+function roundedExponent(value: number, last: number): number {
+  if (value === 0) return last;
+  const exponent = decimalExponent(value);
+  const digits = exponent - last;
+  return digits < 0 || digits > 100
+    ? exponent
+    : decimalExponent(Number(value.toExponential(digits)));
+}
+
+/** A number times 10^power, by its decimal figures: no overflow on the way. */
+function shift(value: number, power: number): number {
+  const [mantissa, exponent] = value.toExponential().split("e");
+  return Number(`${mantissa}e${Number(exponent) + power}`);
 }
 
 /** Exponent of ten of the leading digit: 2 for 345, -3 for 0.0012. */
@@ -76,4 +87,9 @@ function fixed(value: number, places: number): string {
 
 function minus(text: string): string {
   return text.replace("-", "−");
+}
+
+/** A number with a fixed count of decimal places and a true minus sign. */
+export function formatFixed(value: number, places: number): string {
+  return Number.isFinite(value) ? fixed(value, places) : formatNonFinite(value);
 }

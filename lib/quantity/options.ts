@@ -23,7 +23,7 @@ export function readOptions<R extends OptionReaders>(
   readers: R,
 ): ReadOptions<R> {
   if (given === undefined) return {};
-  if (typeof given !== "object" || given === null || Array.isArray(given)) {
+  if (typeof given !== "object" || given === null || Symbol.iterator in given) {
     throw new TypeError(
       `Cannot read the options of ${owner}: expected an object, got ${show(given)}`,
     );
@@ -31,7 +31,7 @@ export function readOptions<R extends OptionReaders>(
   const names = Object.keys(readers);
   const read: Record<string, unknown> = {};
   for (const [name, value] of Object.entries(given)) {
-    if (!(name in readers)) throw unknownOption(owner, name, names);
+    if (!Object.hasOwn(readers, name)) throw unknownOption(owner, name, names);
     if (value !== undefined) read[name] = readers[name](value, `option "${name}" of ${owner}`);
   }
   return read as ReadOptions<R>;
@@ -71,13 +71,18 @@ export function number(range: { min?: number; max?: number } = {}): OptionReader
   const { min = -Infinity, max = Infinity } = range;
   return (value, name) => {
     if (typeof value !== "number" || !Number.isFinite(value)) {
-      throw wrongType(name, value, "a number");
+      throw wrongType(name, value, "a finite number");
     }
     if (value < min || value > max) {
-      throw outOfRange(name, value, `between ${min} and ${max}`);
+      throw outOfRange(name, value, describeRange(min, max));
     }
     return value;
   };
+}
+
+function describeRange(min: number, max: number): string {
+  if (max === Infinity) return `${min} or more`;
+  return min === -Infinity ? `${max} or less` : `between ${min} and ${max}`;
 }
 
 /** A whole number, at least `min`. */
@@ -140,7 +145,7 @@ export function list<T>(element: OptionReader<T>): OptionReader<T[]> {
 /** An object from names to values, each read by the same reader. */
 export function record<T>(element: OptionReader<T>): OptionReader<Record<string, T>> {
   return (value, name) => {
-    if (typeof value !== "object" || value === null || Array.isArray(value)) {
+    if (typeof value !== "object" || value === null || Symbol.iterator in value) {
       throw wrongType(name, value, "an object from names to values");
     }
     return Object.fromEntries(
@@ -176,6 +181,7 @@ function show(value: unknown): string {
   if (typeof value === "function") return "a function";
   if (Array.isArray(value)) return `a list of ${value.length}`;
   if (typeof value === "object" && value !== null) {
+    if (Symbol.iterator in value) return `a ${value.constructor.name}`;
     return `an object (${Object.keys(value).join(", ")})`;
   }
   return String(value);

@@ -1,5 +1,5 @@
 import { describeDimension } from "./dimension.ts";
-import { commensurable, convert, parseUnit, UnitError } from "./unit.ts";
+import { commensurable, convert, parseUnit, type Unit, UnitError } from "./unit.ts";
 
 /** A physical quantity in an option: a bare number in the canonical unit, or text with its unit,
  * such as `"25 °C"`, `"3 mmol/L"`, `"90 min"`. */
@@ -14,7 +14,7 @@ const NUMBER_AND_UNIT = /^\s*([+\-−]?(?:\d+\.?\d*|\.\d+)(?:[eE][+\-−]?\d+)?)
  * @param name what the quantity is, for the error message
  * @returns the value in `unit`
  * @throws {TypeError} if the input is neither a number nor text, or not finite
- * @throws {UnitError} if the text has no unit, an unknown one, or one that does not fit
+ * @throws {UnitError} if the text is no number with a unit, or its unit is not known or does not fit
  * @example
  * ```ts
  * import { strictEqual } from "node:assert";
@@ -46,11 +46,10 @@ export function readQuantity(input: Quantity, unit: string, name: string): numbe
     );
   }
   const value = Number(match[1].replaceAll("−", "-"));
-  if (match[2].startsWith(",")) {
-    throw new UnitError(
-      `Cannot read ${name} from "${input}": write the decimal sign as a point`,
-      input,
-    );
+  const form = wrongForm(match[2]);
+  if (form) throw new UnitError(`Cannot read ${name} from "${input}": ${form}`, input);
+  if (!Number.isFinite(value)) {
+    throw new TypeError(`Cannot read ${name}: "${match[1]}" is too large for a number`);
   }
   const to = parseUnit(unit);
   if (match[2] === "") {
@@ -60,7 +59,7 @@ export function readQuantity(input: Quantity, unit: string, name: string): numbe
       input,
     );
   }
-  const from = parseUnit(match[2]);
+  const from = readUnit(match[2], input, name);
   if (!commensurable(from, to)) {
     throw new UnitError(
       `Cannot read ${name} from "${input}": ${match[2]} measures ${
@@ -70,4 +69,24 @@ export function readQuantity(input: Quantity, unit: string, name: string): numbe
     );
   }
   return convert(value, from, to);
+}
+
+/** What is wrong with the way a number is written, by what follows its first figures. */
+function wrongForm(rest: string): string | undefined {
+  if (rest.startsWith(",")) return "write the decimal sign as a point";
+  if (/^[·×*x]\s*10/.test(rest)) return "write a power of ten as 1.5e-3";
+  if (/^(?!1(?![\d.]))[.'’]?\d/.test(rest)) {
+    return "write the figures of the number together, as 12000";
+  }
+  return undefined;
+}
+
+function readUnit(text: string, input: string, name: string): Unit {
+  try {
+    return parseUnit(text);
+  } catch (error) {
+    if (!(error instanceof UnitError)) throw error;
+    const why = error.message.slice(error.message.indexOf(`": `) + 3);
+    throw new UnitError(`Cannot read ${name} from "${input}": ${why}`, input);
+  }
 }

@@ -110,26 +110,31 @@ class UnitReader {
     let dimension = DIMENSIONLESS;
     let divide = false;
     let divided = false;
+    let pending = false;
     for (let first = true;; first = false) {
       const token = this.#next();
       if (token.kind === "end" || (token.kind === "close" && inside)) {
         if (token.kind === "end" && inside) this.#fail(`")" is missing`);
-        if (first || divide) this.#fail("a unit is missing at the end");
+        if (first || pending) this.#fail("a unit is missing at the end");
         return { factor, offset: 0, dimension };
       }
-      if (token.kind === "times") continue;
-      if (token.kind === "over") {
-        divide = true;
+      if (token.kind === "times" || token.kind === "over") {
+        if (pending || (first && token.kind === "times")) {
+          this.#fail(`"${token.text}" is not expected here`);
+        }
+        pending = true;
+        divide = token.kind === "over";
         continue;
       }
-      if (divided && !divide) {
+      pending = false;
+      if (divided && !divide && (token.kind === "symbol" || token.kind === "open")) {
         this.#fail(
           `what stands behind "/" can be read in two ways: write it like L/(mol s) or L mol-1 s-1`,
         );
       }
       const part = token.kind === "open" ? this.#product(true) : this.#symbol(token);
       const power = this.#exponent() * (divide ? -1 : 1);
-      factor *= part.factor ** power;
+      factor *= raise(part.factor, power);
       dimension = multiplyDimensions(dimension, part.dimension, power);
       divided ||= divide;
       divide = false;
@@ -167,12 +172,19 @@ class UnitReader {
       [...match[3]].map((c) => c === "·" ? "." : "0123456789-"[SUPERSCRIPTS.indexOf(c)] ?? c)
         .join("");
     const [numerator, denominator] = plain.split("/");
-    return Number(numerator) / Number(denominator ?? 1);
+    const exponent = Number(numerator) / Number(denominator ?? 1);
+    if (!Number.isFinite(exponent)) this.#fail(`"${match[0]}" is no exponent`);
+    return exponent;
   }
 
   #fail(why: string): never {
     throw new UnitError(`Cannot read the unit "${this.text}": ${why}`, this.text);
   }
+}
+
+/** A power of a unit's size; 1 dm³ is then 0.001 m³ to the last bit. */
+function raise(factor: number, power: number): number {
+  return factor < 1 ? (1 / factor) ** -power : factor ** power;
 }
 
 interface Token {

@@ -106,7 +106,8 @@ export function unitSymbolHint(text: string): string {
 
 function fromLibrary(name: string): UnitSymbol {
   const base = new Qty(1, name).toBase();
-  return { factor: base.scalar, offset: 0, dimension: dimensionOf(name) };
+  // Every unit taken from the library is a short decimal number of SI units: 15 figures hold it.
+  return { factor: Number(base.scalar.toPrecision(15)), offset: 0, dimension: dimensionOf(name) };
 }
 
 function dimensionOf(name: string): Dimension {
