@@ -244,6 +244,17 @@ describe("honest ends", () => {
     expect(fit.parameters[2].standardError).toBeGreaterThan(0);
   });
 
+  test("from any start, the end is the minimum or k has no standard error", () => {
+    // Starts on plateaus and in the limit k → 0, where k and the end value only count together.
+    for (const k of [-2, -1.5, -1, -0.5, 0, 1, 10, 36, 100, 370, 800]) {
+      const fit = nonlinearLeastSquares({ ...decay, start: [1, 0, k] });
+      const right = Math.abs(fit.parameters[2].value - 0.290201) < 1e-5;
+      expect(right || Number.isNaN(fit.parameters[2].standardError), `from k = ${k}: ${fit}`)
+        .toBe(true);
+      if (!right) expect(fit.cautions.map((c) => c.severity)).toContain("serious");
+    }
+  });
+
   test("as many parameters as readings leave no error to speak of", () => {
     const fit = nonlinearLeastSquares({ ...decay, x: [[0], [3], [9]], y: [1.2, 0.526, 0.133] });
     expect(fit.degreesOfFreedom).toBe(0);
