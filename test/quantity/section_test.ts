@@ -16,6 +16,7 @@ describe("a cell as a reader sees it", () => {
     [0.5, "1", "0.5000"],
     [NaN, undefined, "not determined"],
     [estimate, undefined, "83.14 ± 0.62 kJ/mol"],
+    [{ value: 0.25, text: "a quarter" }, undefined, "a quarter"],
   ])("%o in %s", (cell, unit, expected) => {
     expect(cellText(cell, unit)).toBe(expected);
   });
@@ -25,6 +26,11 @@ describe("a cell as data", () => {
   test("numbers and words stay, what is not finite becomes null", () => {
     expect([1.5, "a", null, NaN, Infinity, -Infinity].map(cellJson))
       .toEqual([1.5, "a", null, null, null, null]);
+  });
+
+  test("a number with its own text stays the number", () => {
+    expect(cellJson({ value: 0.25, text: "a quarter" })).toBe(0.25);
+    expect(cellJson({ value: NaN, text: "none" })).toBeNull();
   });
 
   test("an estimate becomes its plain data", () => {
