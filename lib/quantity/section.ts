@@ -1,8 +1,16 @@
 import { Estimate } from "./estimate.ts";
 import { formatNumber } from "./number_format.ts";
 
-/** One value in a table: an estimate, a number, words, or nothing. */
-export type Cell = Estimate | number | string | null;
+/** A number with the text that shows it. */
+export interface ShownNumber {
+  /** The number, for JSON. */
+  readonly value: number;
+  /** How a reader sees it. */
+  readonly text: string;
+}
+
+/** One value in a table: an estimate, a number (with its own text or without), words, or nothing. */
+export type Cell = Estimate | ShownNumber | number | string | null;
 
 /** A named value of a result. */
 export interface Row {
@@ -60,11 +68,12 @@ export function cellText(cell: Cell, unit?: string): string {
       : formatNumber(cell, 4);
     return unit && unit !== "1" ? `${text} ${unit}` : text;
   }
-  return cell.toString();
+  return cell instanceof Estimate ? cell.toString() : cell.text;
 }
 
 /** A cell as data: what is not finite becomes `null`. */
 export function cellJson(cell: Cell): unknown {
-  if (typeof cell === "number") return Number.isFinite(cell) ? cell : null;
-  return cell instanceof Estimate ? cell.toJSON() : cell;
+  if (cell instanceof Estimate) return cell.toJSON();
+  const value = typeof cell === "object" && cell !== null ? cell.value : cell;
+  return typeof value === "number" && !Number.isFinite(value) ? null : value;
 }

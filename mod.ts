@@ -1,0 +1,76 @@
+/** Ratebook: from files of runs to a rate law, an activation energy and a report.
+ *
+ * @example The main job
+ * ```ts
+ * import { ok, strictEqual } from "node:assert";
+ * import { compareRateLaws, fitArrhenius, readRuns } from "ratebook";
+ *
+ * const runs = await readRuns("data/e17_hydrolysis.csv");
+ * const warmest = runs.filter((run) => run.temperature! > 353);
+ * strictEqual(compareRateLaws(warmest).best?.order.value, 1);
+ * const fit = fitArrhenius(runs, { order: 1 });
+ * const [low, high] = fit.activationEnergy.interval(0.99);
+ * ok(low < 84 && 84 < high); // the value behind these invented data, kJ/mol
+ * ```
+ *
+ * @module */
+
+// Quantities
+export { Estimate } from "./lib/quantity/estimate.ts";
+export type { EstimateInput, EstimateJson } from "./lib/quantity/estimate.ts";
+export { rateConstantUnit } from "./lib/quantity/rate_constant_unit.ts";
+export type { RateConstantUnitOptions } from "./lib/quantity/rate_constant_unit.ts";
+export { readQuantity } from "./lib/quantity/read_quantity.ts";
+export type { Quantity } from "./lib/quantity/read_quantity.ts";
+export { UnitError } from "./lib/quantity/unit.ts";
+export { Result } from "./lib/quantity/result.ts";
+export type { EvidenceBundle, Source } from "./lib/quantity/result.ts";
+export type { Cell, Column, Row, Section, ShownNumber } from "./lib/quantity/section.ts";
+export type { Caution, Severity } from "./lib/quantity/caution.ts";
+
+// Statistics
+export { LinearFit, linearLeastSquares } from "./lib/statistics/linear_least_squares.ts";
+export type { LinearLeastSquaresOptions } from "./lib/statistics/linear_least_squares.ts";
+export { NonlinearFit, nonlinearLeastSquares } from "./lib/statistics/nonlinear_least_squares.ts";
+export type { Model, NonlinearLeastSquaresOptions } from "./lib/statistics/nonlinear_least_squares.ts";
+export { correctedAkaike } from "./lib/statistics/information_criterion.ts";
+export { nestedFTest } from "./lib/statistics/nested_f_test.ts";
+export type { FTest, SumOfSquares } from "./lib/statistics/nested_f_test.ts";
+export { runsTest } from "./lib/statistics/runs_test.ts";
+export type { RunsTest } from "./lib/statistics/runs_test.ts";
+export { durbinWatson } from "./lib/statistics/durbin_watson.ts";
+
+// Runs
+export { Run } from "./lib/run/run.ts";
+export { RunSet } from "./lib/run/run_set.ts";
+export { readRuns } from "./lib/run/read_runs.ts";
+
+// Rate laws
+export { Linearization, linearize } from "./lib/rate_law/linearize.ts";
+export type { LinearizeOptions } from "./lib/rate_law/linearize.ts";
+export { fitRateLaw } from "./lib/rate_law/fit_rate_law.ts";
+export type { FitRateLawOptions, Runs } from "./lib/rate_law/fit_rate_law.ts";
+export { RateLawFit } from "./lib/rate_law/rate_law_fit.ts";
+export type { RunFit } from "./lib/rate_law/rate_law_fit.ts";
+export { compareRateLaws } from "./lib/rate_law/compare_rate_laws.ts";
+export type { CompareRateLawsOptions } from "./lib/rate_law/compare_rate_laws.ts";
+export { RateLawComparison } from "./lib/rate_law/rate_law_comparison.ts";
+export type { RateLawRank } from "./lib/rate_law/rate_law_comparison.ts";
+
+// Temperature
+export { fitArrhenius } from "./lib/temperature/fit_arrhenius.ts";
+export type { FitArrheniusOptions, RateConstantRow } from "./lib/temperature/fit_arrhenius.ts";
+export { ArrheniusFit } from "./lib/temperature/arrhenius_fit.ts";
+export type { ArrheniusBand, RateConstantPoint } from "./lib/temperature/arrhenius_fit.ts";
+export { PredictedRateConstant } from "./lib/temperature/predicted_rate_constant.ts";
+
+// Figures
+export { Figure } from "./lib/figure/figure.ts";
+export { plotRuns } from "./lib/figure/plot_runs.ts";
+export { plotLinearizations } from "./lib/figure/plot_linearizations.ts";
+export { plotResiduals } from "./lib/figure/plot_residuals.ts";
+export { plotArrhenius } from "./lib/figure/plot_arrhenius.ts";
+
+// Reports
+export { runNotebook } from "./lib/report/run_notebook.ts";
+export { renderReport } from "./lib/report/render_report.ts";
