@@ -1,5 +1,5 @@
-import quantile from "@stdlib/stats-base-dists-t-quantile";
 import { formatNumber, formatWithUncertainty } from "./number_format.ts";
+import { studentFactor } from "./student_factor.ts";
 import { convert, convertDifference, parseUnit } from "./unit.ts";
 
 /** What an {@link Estimate} is made from. */
@@ -93,7 +93,7 @@ export class Estimate {
         `Cannot give an interval of level ${level}: write a number between 0 and 1, such as 0.95`,
       );
     }
-    const t = quantile((1 + level) / 2, Math.min(this.degreesOfFreedom ?? NORMAL, NORMAL));
+    const t = studentFactor(level, this.degreesOfFreedom ?? Infinity);
     if (this.symmetricOn === "linear") {
       const half = t * this.standardError;
       return [this.value - half, this.value + half];
@@ -150,10 +150,6 @@ export class Estimate {
     return { "text/plain": this.toString() };
   }
 }
-
-/** Degrees of freedom at which Student's t is the normal distribution to 12 digits; the package's
- * quantile fails above 1e15 and at infinity. */
-const NORMAL = 1e12;
 
 function finite(value: number): number | null {
   return Number.isFinite(value) ? value : null;

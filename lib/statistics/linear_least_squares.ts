@@ -137,7 +137,7 @@ export class LinearFit extends Result {
  * import { linearLeastSquares } from "ratebook";
  *
  * const line = linearLeastSquares({ x: [0, 1, 2, 3], y: [1, 3.1, 4.9, 7] });
- * strictEqual(line.slope.toString(), "1.980 ± 0.035");
+ * strictEqual(line.slope.toString(), "1.980 ± 0.042");
  * ``` */
 export function linearLeastSquares(options: LinearLeastSquaresOptions): LinearFit {
   const read = option.readOptions("linearLeastSquares", options, {
@@ -197,7 +197,11 @@ export function linearLeastSquares(options: LinearLeastSquaresOptions): LinearFi
     Array.from(values).reduce((sum, v, i) => sum + (weights?.[i] ?? 1) * v * v, 0);
   const residualSumOfSquares = square(residuals);
   const degreesOfFreedom = m - n;
-  const variance = read.knownUncertainties ? 1 : residualSumOfSquares / degreesOfFreedom;
+  const variance = read.knownUncertainties
+    ? 1
+    : degreesOfFreedom > 0
+    ? residualSumOfSquares / degreesOfFreedom
+    : NaN;
   const covariance = normalInverse(system).map((row) => row.map((value) => value * variance));
   const errors = standardErrors(covariance);
   const totalWeight = y.reduce((sum, _, i) => sum + (weights?.[i] ?? 1), 0);

@@ -161,7 +161,7 @@ export function nonlinearLeastSquares(options: NonlinearLeastSquaresOptions): No
     start: option.list(option.number()),
     weights: option.list(option.number({ min: 0 })),
     knownUncertainties: option.flag,
-    bounds: option.list((value) => value as [number, number] | undefined),
+    bounds: option.list(boundsPair),
     names: option.list(option.text),
     units: option.list(option.text),
     maxIterations: option.integer(1),
@@ -196,6 +196,18 @@ export function nonlinearLeastSquares(options: NonlinearLeastSquaresOptions): No
   });
   const residuals = Float64Array.from(y, (value, i) => value - model(x[i], outcome.parameters));
   return new NonlinearFit(outcome, { names, units }, residuals, read.knownUncertainties ?? false);
+}
+
+function boundsPair(value: unknown, name: string): [number, number] | undefined {
+  if (value === undefined || value === null) return undefined;
+  const pair = Array.isArray(value) && value.length === 2 &&
+    value.every((end) => typeof end === "number") && value[0] <= value[1];
+  if (pair) return value as [number, number];
+  throw new TypeError(
+    `Cannot use ${
+      JSON.stringify(value)
+    } as ${name}: expected [lower, upper], ±Infinity where there is none`,
+  );
 }
 
 function matchLength(a: string, x: readonly unknown[], b: string, y: readonly unknown[]): void {

@@ -1,8 +1,8 @@
 import { Matrix, SingularValueDecomposition } from "ml-matrix";
 import { triangularize } from "./triangular_factor.ts";
 
-/** Singular values below this share of the largest count as zero. */
-const RANK_TOLERANCE = 1e-11;
+/** Singular values below this share of the largest count as zero, columns being of unit length. */
+export const RANK_TOLERANCE = 1e-11;
 
 /** A least-squares system min ‖J s + r‖ reduced to the singular values of J with its columns
  * scaled to unit length, from which steps of any damping and the covariance follow. */
@@ -28,11 +28,13 @@ export interface SingularSystem {
  *
  * @param jacobian row-major, m·n, kept
  * @param residual length m, kept
- * @param scale scale of each column, length n; entries > 0 */
+ * @param scale scale of each column, length n; entries > 0
+ * @param tolerance share of the largest singular value below which one counts as zero */
 export function reduceSystem(
   jacobian: Float64Array,
   residual: Float64Array,
   scale: Float64Array,
+  tolerance = RANK_TOLERANCE,
 ): SingularSystem {
   const n = scale.length;
   const m = residual.length;
@@ -63,7 +65,7 @@ export function reduceSystem(
   let reachable = 0;
   for (let i = 0; i < n; i++) reachable += b[i] * b[i];
   const largest = singularValues[0] ?? 0;
-  const rank = singularValues.filter((s) => s > RANK_TOLERANCE * largest && s > 0).length;
+  const rank = singularValues.filter((s) => s > tolerance * largest && s > 0).length;
   return { columns: n, singularValues, vectors, projection, scale, sumOfSquares, reachable, rank };
 }
 

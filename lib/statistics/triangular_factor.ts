@@ -9,15 +9,18 @@
  * @param m rows @param n columns, n ≤ m */
 export function triangularize(a: Float64Array, b: Float64Array, m: number, n: number): void {
   for (let j = 0; j < n; j++) {
-    let norm = 0;
-    for (let i = j; i < m; i++) norm += a[i * n + j] * a[i * n + j];
-    norm = Math.sqrt(norm);
-    if (norm === 0) continue;
+    // Entries are taken relative to the greatest, so that their squares cannot vanish or overflow.
+    let greatest = 0;
+    for (let i = j; i < m; i++) greatest = Math.max(greatest, Math.abs(a[i * n + j]));
+    if (greatest === 0) continue;
+    let square = 0;
+    for (let i = j; i < m; i++) square += (a[i * n + j] / greatest) ** 2;
+    let norm = greatest * Math.sqrt(square);
     if (a[j * n + j] > 0) norm = -norm;
-    // v = x − norm·e₁, kept in column j; the reflection is I + v vᵀ / (norm · v₁).
-    const head = a[j * n + j] - norm;
-    a[j * n + j] = head;
-    const scale = 1 / (norm * head);
+    // v = (x − norm·e₁)/norm, kept in column j; the reflection is I + v vᵀ / v₁.
+    for (let i = j; i < m; i++) a[i * n + j] /= norm;
+    a[j * n + j] -= 1;
+    const scale = 1 / a[j * n + j];
     for (let k = j + 1; k < n; k++) {
       let dot = 0;
       for (let i = j; i < m; i++) dot += a[i * n + j] * a[i * n + k];

@@ -55,6 +55,12 @@ const ROUNDING_OFFSET = 1e-4;
 /** Most steps taken on trust where rounding hides whether they lower the sum of squares. */
 const MOST_POLISHING = 4;
 
+/** Singular values below this share of the largest take no part in a step. */
+const STEP_TOLERANCE = 1e-15;
+
+/** Scale of a column that is zero. */
+const SHORTEST = 1e-300;
+
 /** First trust radius over the scaled size of the start: small, since a first leap along a badly
  * scaled start can end on a plateau. */
 const FIRST_RADIUS = 0.1;
@@ -92,22 +98,26 @@ export function minimizeSquares(problem: LeastSquaresProblem, stop: StoppingOpti
   for (let iteration = 0;; iteration++) {
     problem.jacobian(at, jacobian);
     growScale(jacobian, scale, count);
-    const { system, free } = freeSystem(jacobian, residuals, scale, at, lower, upper);
+    const free = freeParameters(jacobian, residuals, at, lower, upper);
+    const system = freeSystem(jacobian, residuals, scale, free, STEP_TOLERANCE);
+    // Columns of unit length: what the data determine must not hang on where the search has been.
+    const lengths = columnLengths(jacobian, n, count);
+    const here = freeSystem(jacobian, residuals, lengths, free);
     const end = (converged: boolean, reason: string): Minimum => ({
       parameters: at,
       residuals,
-      system,
+      system: here,
       free,
       converged,
       reason,
       iterations: iteration,
     });
-    const offset = relativeOffset(system, count);
+    const offset = relativeOffset(here, count);
     if (!jacobian.every(Number.isFinite)) {
       return end(false, "the derivatives of the model are not finite at the best point");
     }
     if (offset <= RELATIVE_OFFSET) return end(true, "the relative offset criterion is met");
-    if (square <= vanishing(problem, scale, at)) return end(true, "the residuals vanish");
+    if (square <= vanishing(problem, lengths, at)) return end(true, "the residuals vanish");
     if (stop.signal?.aborted) return end(false, "aborted before convergence");
     if (iteration >= stop.maxIterations) {
       return end(false, `not converged in ${stop.maxIterations} iterations`);
@@ -168,23 +178,28 @@ function sumOfSquares(values: Float64Array): number {
 /** Column lengths, never shrinking: Moré's scaling, independent of the parameters' units. */
 function growScale(jacobian: Float64Array, scale: Float64Array, count: number): void {
   const n = scale.length;
-  for (let j = 0; j < n; j++) {
-    let norm = 0;
-    for (let i = 0; i < count; i++) norm += jacobian[i * n + j] ** 2;
-    scale[j] = Math.max(scale[j], Math.sqrt(norm), Number.MIN_VALUE * 2 ** 60);
-  }
+  const lengths = columnLengths(jacobian, n, count);
+  for (let j = 0; j < n; j++) scale[j] = Math.max(scale[j], lengths[j]);
 }
 
-/** The system over the parameters that may move. */
-function freeSystem(
+/** Length of each column; a tiny number in place of 0. */
+function columnLengths(jacobian: Float64Array, n: number, count: number): Float64Array {
+  return Float64Array.from({ length: n }, (_, j) => {
+    let square = 0;
+    for (let i = 0; i < count; i++) square += jacobian[i * n + j] ** 2;
+    return Math.max(Math.sqrt(square), SHORTEST);
+  });
+}
+
+/** Parameters that may move: not at a bound with the sum of squares falling outward. */
+function freeParameters(
   jacobian: Float64Array,
   residuals: Float64Array,
-  scale: Float64Array,
   at: Float64Array,
   lower: Float64Array,
   upper: Float64Array,
-): { system: SingularSystem; free: number[] } {
-  const n = scale.length;
+): number[] {
+  const n = at.length;
   const free: number[] = [];
   for (let j = 0; j < n; j++) {
     let gradient = 0;
@@ -192,12 +207,24 @@ function freeSystem(
     const held = (at[j] <= lower[j] && gradient >= 0) || (at[j] >= upper[j] && gradient <= 0);
     if (!held) free.push(j);
   }
+  return free;
+}
+
+/** The linearised system over the parameters that may move. */
+function freeSystem(
+  jacobian: Float64Array,
+  residuals: Float64Array,
+  scale: Float64Array,
+  free: readonly number[],
+  tolerance?: number,
+): SingularSystem {
+  const n = scale.length;
   const columns = new Float64Array(residuals.length * free.length);
   for (let i = 0; i < residuals.length; i++) {
     free.forEach((j, k) => columns[i * free.length + k] = jacobian[i * n + j]);
   }
   const freeScale = Float64Array.from(free, (j) => scale[j]);
-  return { system: reduceSystem(columns, residuals, freeScale), free };
+  return reduceSystem(columns, residuals, freeScale, tolerance);
 }
 
 /** Tangent-plane part of the residual over the part across it, each per degree of freedom. */
