@@ -1,5 +1,5 @@
 import type { Caution } from "../quantity/caution.ts";
-import { Estimate } from "../quantity/estimate.ts";
+import type { Estimate } from "../quantity/estimate.ts";
 import { formatFixed, formatNumber } from "../quantity/number_format.ts";
 import { Result, type Source } from "../quantity/result.ts";
 import type { Section } from "../quantity/section.ts";

@@ -1,0 +1,97 @@
+import { convert, parseUnit } from "../quantity/unit.ts";
+import type { Run } from "./run.ts";
+import type { Table } from "./table.ts";
+
+/** The part of a data frame that is used here: column names and rows of values. */
+export interface DataFrame {
+  /** Column names, with units as in file headers. */
+  readonly columns: readonly string[];
+  /** Values, row by row. */
+  readonly values: readonly unknown[];
+  /** Number of rows and columns. */
+  readonly shape: readonly [number, number];
+}
+
+/** Whether a value looks like a data frame. */
+export function isDataFrame(value: unknown): value is DataFrame {
+  return typeof value === "object" && value !== null && "columns" in value && "values" in value &&
+    "shape" in value && Array.isArray(value.columns) && Array.isArray(value.values);
+}
+
+/** The table of a data frame; missing values become empty cells. */
+export function tableOfDataFrame(frame: DataFrame): Table {
+  return {
+    file: "data frame",
+    headers: frame.columns.map(String),
+    headerLine: 0,
+    rows: frame.values.map((row, i) => ({
+      line: i + 1,
+      cells: (row as unknown[]).map((value) =>
+        value === null || value === undefined || Number.isNaN(value) ? "" : String(value).trim()
+      ),
+    })),
+  };
+}
+
+/** Runs as a data frame with a row a reading, headers with units as `readRuns` reads them. Readings below a
+ * limit are kept as their text.
+ *
+ * Loads the data-frame package when called, not before.
+ *
+ * @param runs the runs
+ * @returns a DataFrame of the package danfojs
+ * @example There and back
+ * ```ts
+ * import { deepStrictEqual } from "node:assert";
+ * import { readRuns, toDataFrame } from "ratebook";
+ *
+ * const runs = await readRuns("data/e17_hydrolysis.csv");
+ * const back = await readRuns(await toDataFrame(runs));
+ * deepStrictEqual(back.find("60a").times, runs.find("60a").times);
+ * ``` */
+export async function toDataFrame(runs: Iterable<Run>): Promise<DataFrame> {
+  // Not a literal, so that nobody who does not call this has to download the package.
+  const name = "danfojs";
+  const { DataFrame } = await import(name);
+  return new DataFrame(readingRows([...runs])) as unknown as DataFrame;
+}
+
+/** Rows of readings, a row a time of a run, keys being headers with units.
+ *
+ * @param runs the runs */
+export function readingRows(runs: readonly Run[]): Record<string, string | number | null>[] {
+  const species = [...new Set(runs.flatMap((run) => Object.keys(run.initialConcentrations)))];
+  const properties = [...new Set(runs.flatMap((run) => Object.keys(run.properties)))];
+  const names = [...new Set(runs.flatMap((run) => run.signals.map((signal) => signal.name)))];
+  const units = new Map(runs.flatMap((run) => run.signals.map((s) => [s.name, s.shownUnit])));
+  const uncertain = names.filter((name) =>
+    runs.some((run) => run.signals.some((s) => s.name === name && s.standardUncertainties))
+  );
+  return runs.flatMap((run) =>
+    Array.from(run.times, (time, i) => {
+      const row: Record<string, string | number | null> = {
+        run: run.id,
+        "temperature [K]": run.temperature ?? null,
+      };
+      for (const name of species) {
+        row[`initial ${name} [mol/L]`] = run.initialConcentrations[name] ?? null;
+      }
+      for (const name of properties) row[name] = run.properties[name] ?? null;
+      row["time [s]"] = time;
+      for (const name of names) {
+        const unit = units.get(name)!;
+        const signal = run.signals.find((s) => s.name === name);
+        const shown = (value: number | undefined) =>
+          signal === undefined || value === undefined || Number.isNaN(value)
+            ? null
+            : convert(value, parseUnit(signal.unit), parseUnit(unit));
+        const censored = signal?.censored.find((c) => c.index === i)?.text;
+        row[`${name} [${unit}]`] = censored ?? shown(signal?.values[i]);
+        if (uncertain.includes(name)) {
+          row[`u(${name}) [${unit}]`] = shown(signal?.standardUncertainties?.[i]);
+        }
+      }
+      return row;
+    })
+  );
+}

@@ -1,0 +1,101 @@
+import { type FilePlace, RunFileError } from "./run_file_error.ts";
+
+/** A table of text cells as it stands in a file, blank rows left out, places kept. */
+export interface Table {
+  /** File name. */
+  readonly file: string;
+  /** Header cells. */
+  readonly headers: readonly string[];
+  /** Line of the headers, from 1. */
+  readonly headerLine: number;
+  /** Rows under it. */
+  readonly rows: readonly TableRow[];
+}
+
+/** A row of a table. */
+export interface TableRow {
+  /** Its line in the file, from 1. */
+  readonly line: number;
+  /** Cells, trimmed, as many as headers. */
+  readonly cells: readonly string[];
+}
+
+/** Separators of cells. */
+export type Separator = "," | ";" | "\t";
+
+const SEPARATORS: readonly Separator[] = ["\t", ";", ","];
+
+/** Reads delimited text into a table. The separator is that which the header line has outside quotes and
+ * brackets, tab before semicolon before comma.
+ *
+ * @param text the file's text, without byte-order mark
+ * @param file its name @param separator the separator, if it was given
+ * @throws {RunFileError} if the file is empty or a row has more or fewer cells than the header */
+export async function readTable(text: string, file: string, separator?: Separator): Promise<Table> {
+  const { parse } = await import("csv-parse/sync");
+  const delimiter = separator ?? detectSeparator(text);
+  let records: { record: string[]; info: { lines: number } }[];
+  try {
+    records = parse(text, {
+      delimiter,
+      info: true,
+      relax_column_count: true,
+      skip_empty_lines: false,
+      trim: true,
+      bom: true,
+    }) as unknown as typeof records;
+  } catch (error) {
+    const line = (error as { lines?: number }).lines;
+    throw new RunFileError([{
+      file,
+      line,
+      message: `the quotation marks do not pair up (${(error as Error).message})`,
+    }]);
+  }
+  const filled = records.map(({ record, info }) => ({ line: info.lines, cells: record }))
+    .filter((row) => row.cells.some((cell) => cell !== ""));
+  const [head, ...rows] = filled;
+  if (!head) throw new RunFileError([{ file, message: "the file is empty" }]);
+  const headers = withoutEmptyTail(head.cells);
+  const faults = rows.filter((row) => withoutEmptyTail(row.cells).length > headers.length)
+    .map((row) => ({
+      file,
+      line: row.line,
+      message: `the row has ${withoutEmptyTail(row.cells).length} cells and the header ` +
+        `${headers.length}; quote cells that hold the separator "${delimiter}", or say which ` +
+        `separator it is with the option "separator"`,
+    }));
+  if (faults.length > 0) throw new RunFileError(faults);
+  return {
+    file,
+    headers,
+    headerLine: head.line,
+    rows: rows.map(({ line, cells }) => ({
+      line,
+      cells: headers.map((_, i) => cells[i] ?? ""),
+    })),
+  };
+}
+
+/** The place of a cell. */
+export function placeOf(table: Table, row: TableRow, column: number): FilePlace {
+  return {
+    file: table.file,
+    line: row.line,
+    column: column + 1,
+    header: table.headers[column],
+    cell: row.cells[column],
+  };
+}
+
+function detectSeparator(text: string): Separator {
+  const first = text.split(/\r?\n|\r/).find((line) => line.trim() !== "") ?? "";
+  const bare = first.replaceAll(/"[^"]*"/g, "").replaceAll(/\[[^\]]*\]|\([^)]*\)/g, "");
+  return SEPARATORS.find((separator) => bare.includes(separator)) ?? ",";
+}
+
+function withoutEmptyTail(cells: readonly string[]): string[] {
+  let end = cells.length;
+  while (end > 0 && cells[end - 1] === "") end--;
+  return cells.slice(0, end);
+}
