@@ -102,7 +102,12 @@ export function plotArrhenius(fit: ArrheniusFit, options: PlotArrheniusOptions =
   const legend = drawLegend([
     { label: `rate constant, ${percent} interval`, colour: INK, symbol: "circle" },
     { label: "Arrhenius line", colour: COLOURS[0], dash: "none" },
-    ...(hasBand ? [{ label: `${percent} prediction band`, colour: COLOURS[0], dash: "4,3" }] : []),
+    ...(hasBand
+      ? [
+        { label: `${percent} confidence band`, colour: COLOURS[0], shaded: true },
+        { label: `${percent} prediction band`, colour: COLOURS[0], dash: "4,3" },
+      ]
+      : []),
   ], width);
   const alt = `Arrhenius plot: k against 1000 K/T for ${points.length} rate constants from ` +
     `${formatNumber(low, 5)} to ${formatNumber(high, 5)} K, line with activation energy ` +
@@ -151,7 +156,8 @@ function deviationPanel(
     ...marks.flatMap((m) => [Math.abs(m.low), Math.abs(m.high)]),
     ...(view.hasBand ? rows.flatMap((r) => [Math.abs(r.predictedLow), r.predictedHigh]) : []),
   );
-  const bound = greatest > 0 ? greatest : 1;
+  // Points that lie on the line to rounding are drawn on it.
+  const bound = greatest > 1e-6 ? greatest : 1;
   return drawPanel({
     width: view.width,
     height: 170,

@@ -22,19 +22,18 @@ export const COLOURS: readonly string[] = [
   "#000000",
 ];
 
-/** Point symbols, one beside each colour. */
+/** Point symbols. Colours, symbols and dashes are 7, 6 and 5, so that series repeat only after 210. */
 export const SYMBOLS: readonly string[] = [
   "circle",
   "triangle",
   "square",
   "diamond",
   "star",
-  "wye",
   "cross",
 ];
 
-/** Dash patterns, one beside each colour. */
-export const DASHES: readonly string[] = ["none", "6,3", "2,3", "8,3,2,3", "10,4", "4,2", "1,2"];
+/** Dash patterns. */
+export const DASHES: readonly string[] = ["none", "6,3", "2,3", "8,3,2,3", "10,4"];
 
 /** Entry i of a list that starts again at its end. */
 export function cycle<T>(list: readonly T[], i: number): T {

@@ -24,8 +24,10 @@ export function expectFigure(name: string, figure: Figure): void {
 }
 
 function rounded(svg: string): string {
-  return svg.replaceAll(/-?\d+\.\d{3,}/g, (n) => String(Number(Number(n).toFixed(2))))
-    .replaceAll("><", ">\n<") + "\n";
+  const short = (text: string) =>
+    text.replaceAll(/-?\d+\.\d{3,}/g, (n) => String(Number(Number(n).toFixed(2))));
+  // Only inside tags: what a reader sees stays as it is.
+  return svg.replaceAll(/<[^>]*>/g, short).replaceAll("><", ">\n<") + "\n";
 }
 
 function read(file: URL): string | undefined {
