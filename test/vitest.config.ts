@@ -3,14 +3,13 @@
 
 interface DenoConfig {
   imports: Record<string, string>;
+  scopes: Record<string, Record<string, string>>;
 }
 
-function importMap(path: string): Record<string, string> {
-  const url = new URL(path, import.meta.url);
-  return (JSON.parse(Deno.readTextFileSync(url)) as DenoConfig).imports;
-}
-
-const packages = { ...importMap("../deno.json"), ...importMap("./deno.json") };
+const config = JSON.parse(
+  Deno.readTextFileSync(new URL("../deno.json", import.meta.url)),
+) as DenoConfig;
+const packages = { ...config.imports, ...config.scopes["./test/"] };
 
 /** A package named in a test file becomes a data: module that Deno, not Vite, resolves. */
 const denoPackages = {

@@ -2,6 +2,10 @@ import { convert, parseUnit } from "../quantity/unit.ts";
 import type { Run } from "./run.ts";
 import type { Table } from "./table.ts";
 
+/** The data-frame package. It stands here and not in the import map, and is no literal in the import, so that
+ * nobody who does not call for data frames has to download its 370 MB. */
+const PACKAGE: string = "npm:danfojs@1.1.2";
+
 /** The part of a data frame that is used here: column names and rows of values. */
 export interface DataFrame {
   /** Column names, with units as in file headers. */
@@ -50,9 +54,7 @@ export function tableOfDataFrame(frame: DataFrame): Table {
  * deepStrictEqual(back.find("60a").times, runs.find("60a").times);
  * ``` */
 export async function toDataFrame(runs: Iterable<Run>): Promise<DataFrame> {
-  // Not a literal, so that nobody who does not call this has to download the package.
-  const name = "danfojs";
-  const { DataFrame } = await import(name);
+  const { DataFrame } = await import(PACKAGE);
   return new DataFrame(readingRows([...runs])) as unknown as DataFrame;
 }
 
