@@ -1,4 +1,4 @@
-import { convert, parseUnit } from "../quantity/unit.ts";
+import { readingRows } from "./reading_rows.ts";
 import type { Run } from "./run.ts";
 import type { Table } from "./table.ts";
 
@@ -56,44 +56,4 @@ export function tableOfDataFrame(frame: DataFrame): Table {
 export async function toDataFrame(runs: Iterable<Run>): Promise<DataFrame> {
   const { DataFrame } = await import(PACKAGE);
   return new DataFrame(readingRows([...runs])) as unknown as DataFrame;
-}
-
-/** Rows of readings, a row a time of a run, keys being headers with units.
- *
- * @param runs the runs */
-export function readingRows(runs: readonly Run[]): Record<string, string | number | null>[] {
-  const species = [...new Set(runs.flatMap((run) => Object.keys(run.initialConcentrations)))];
-  const properties = [...new Set(runs.flatMap((run) => Object.keys(run.properties)))];
-  const names = [...new Set(runs.flatMap((run) => run.signals.map((signal) => signal.name)))];
-  const units = new Map(runs.flatMap((run) => run.signals.map((s) => [s.name, s.shownUnit])));
-  const uncertain = names.filter((name) =>
-    runs.some((run) => run.signals.some((s) => s.name === name && s.standardUncertainties))
-  );
-  return runs.flatMap((run) =>
-    Array.from(run.times, (time, i) => {
-      const row: Record<string, string | number | null> = {
-        run: run.id,
-        "temperature [K]": run.temperature ?? null,
-      };
-      for (const name of species) {
-        row[`initial ${name} [mol/L]`] = run.initialConcentrations[name] ?? null;
-      }
-      for (const name of properties) row[name] = run.properties[name] ?? null;
-      row["time [s]"] = time;
-      for (const name of names) {
-        const unit = units.get(name)!;
-        const signal = run.signals.find((s) => s.name === name);
-        const shown = (value: number | undefined) =>
-          signal === undefined || value === undefined || Number.isNaN(value)
-            ? null
-            : convert(value, parseUnit(signal.unit), parseUnit(unit));
-        const censored = signal?.censored.find((c) => c.index === i)?.text;
-        row[`${name} [${unit}]`] = censored ?? shown(signal?.values[i]);
-        if (uncertain.includes(name)) {
-          row[`u(${name}) [${unit}]`] = shown(signal?.standardUncertainties?.[i]);
-        }
-      }
-      return row;
-    })
-  );
 }

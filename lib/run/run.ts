@@ -4,7 +4,8 @@ import { type Quantity, readQuantity } from "../quantity/read_quantity.ts";
 import { Result } from "../quantity/result.ts";
 import type { Section } from "../quantity/section.ts";
 import { convert, parseUnit } from "../quantity/unit.ts";
-import { readSignal, type Signal, type SignalInput } from "./signal.ts";
+import { sharedCaution } from "./shared_uncertainty.ts";
+import { readSignal, sameLength, type Signal, type SignalInput } from "./signal.ts";
 
 /** Times as a user writes them: numbers in s, or numbers with their unit. */
 export type TimesInput =
@@ -28,6 +29,8 @@ export interface RunInput {
   signals: readonly (SignalInput | Signal)[];
   /** Readings that are left out of fits, with the reason; they stay listed. */
   exclusions?: readonly Exclusion[];
+  /** What a reader must know about how the run came about. */
+  notes?: readonly Caution[];
 }
 
 /** A reading that is left out of fits. */
@@ -71,6 +74,8 @@ export class Run extends Result {
   readonly signals: readonly Signal[];
   /** Readings left out of fits, with the reason. */
   readonly exclusions: readonly Exclusion[];
+  /** What a reader must know about how the run came about. */
+  readonly notes: readonly Caution[];
 
   /** @param input the run
    * @throws {TypeError} on a missing id or a value of the wrong type
@@ -89,7 +94,9 @@ export class Run extends Result {
     this.properties = { ...input.properties };
     this.times = readTimes(input.times, where);
     this.signals = (input.signals ?? []).map((signal) =>
-      "shownUnit" in signal ? signal : readSignal(signal, this.times.length, where)
+      "shownUnit" in signal
+        ? sameLength(signal, this.times.length, where)
+        : readSignal(signal, this.times.length, where)
     );
     const names = this.signals.map((signal) => signal.name);
     const twice = names.find((name, i) => names.indexOf(name) !== i);
@@ -97,6 +104,7 @@ export class Run extends Result {
       throw new RangeError(`Cannot make ${where}: two signals are called "${twice}"; rename one`);
     }
     this.exclusions = readExclusions(input.exclusions ?? [], this.times.length, where);
+    this.notes = [...input.notes ?? []];
   }
 
   /** The signal of this name, or the only one.
@@ -135,6 +143,7 @@ export class Run extends Result {
       times: this.times,
       signals: this.signals,
       exclusions: this.exclusions,
+      notes: this.notes,
       ...changes,
     });
   }
@@ -153,7 +162,9 @@ export class Run extends Result {
   }
 
   override get cautions(): readonly Caution[] {
-    return this.exclusions.length === 0 ? [] : [{
+    const shared = this.signals.flatMap((signal) => sharedCaution(this.id, signal) ?? []);
+    if (this.exclusions.length === 0) return [...this.notes, ...shared];
+    return [...this.notes, ...shared, {
       code: "readings-excluded",
       severity: "note",
       subject: this.id,

@@ -2,6 +2,7 @@ import type { Caution } from "../quantity/caution.ts";
 import { formatFixed, formatNumber } from "../quantity/number_format.ts";
 import { Result, type Source } from "../quantity/result.ts";
 import type { Section } from "../quantity/section.ts";
+import { type ReadingRow, readingRows } from "./reading_rows.ts";
 import { Run } from "./run.ts";
 
 /** Several runs, with the files they came from. */
@@ -78,6 +79,11 @@ export class RunSet extends Result implements Iterable<Run> {
     );
   }
 
+  /** A row a time of a run, for tables: keys are headers with units, as `readRuns` reads them. */
+  readings(): ReadingRow[] {
+    return readingRows(this.runs);
+  }
+
   override get title(): string {
     const files = this.sources.map((source) => source.name).join(", ");
     return `${this.length} run${this.length === 1 ? "" : "s"}${files ? ` from ${files}` : ""}`;
@@ -102,6 +108,7 @@ export class RunSet extends Result implements Iterable<Run> {
         { key: "temperature", label: "T / K" },
         { key: "signals", label: "signals" },
         { key: "readings", label: "readings" },
+        { key: "firstTime", label: "first time / s" },
         { key: "lastTime", label: "last time / s" },
         ...species.map((name) => ({
           key: `initial ${name}`,
@@ -116,6 +123,7 @@ export class RunSet extends Result implements Iterable<Run> {
           : { value: run.temperature, text: formatFixed(run.temperature, 2) },
         run.signals.map((s) => `${s.name} (${s.shownUnit})`).join(", "),
         run.times.length,
+        run.times[0] ?? null,
         run.times[run.times.length - 1] ?? null,
         ...species.map((name) => run.initialConcentrations[name] ?? null),
         ...(censored ? [run.signals.reduce((sum, signal) => sum + signal.censored.length, 0)] : []),

@@ -13,6 +13,17 @@ export interface CensoredReading {
   readonly limit?: number;
 }
 
+/** An error that all values of a signal have in common, such as that of the absorption coefficient they
+ * were divided by: it moves them together and does not average out over the readings.
+ *
+ * The covariance of two values i and j from it is values[i]·values[j]. */
+export interface SharedUncertainty {
+  /** Where it comes from: `molar absorption coefficient`, `slope of the calibration`. */
+  readonly from: string;
+  /** What one standard deviation of the common cause does to each value, canonical unit, with its sign. */
+  readonly values: Float64Array;
+}
+
 /** One measured signal of a run, one value a time. */
 export interface Signal {
   /** Name of the species or signal. */
@@ -27,6 +38,8 @@ export interface Signal {
   readonly values: Float64Array;
   /** Standard uncertainty of each value that is its own (not shared), canonical unit. */
   readonly standardUncertainties?: Float64Array;
+  /** Uncertainties that the values share, each from its own independent cause. */
+  readonly sharedUncertainties?: readonly SharedUncertainty[];
   /** Readings below a limit; their values are `NaN`. */
   readonly censored: readonly CensoredReading[];
 }
@@ -98,6 +111,17 @@ export function readSignal(input: SignalInput, count: number, where: string): Si
       limit: reading.limit === undefined ? undefined : convert(reading.limit, from, to),
     })),
   };
+}
+
+/** Gives a signal back that is already in canonical units.
+ *
+ * @throws {RangeError} if it has not one value a time */
+export function sameLength(signal: Signal, count: number, where: string): Signal {
+  if (signal.values.length === count) return signal;
+  throw new RangeError(
+    `Cannot make ${where}: signal "${signal.name}" has ${signal.values.length} values and the run ` +
+      `has ${count} times; change both together`,
+  );
 }
 
 function readUncertainties(
