@@ -32,26 +32,40 @@ export type { Caution, Severity } from "./lib/quantity/caution.ts";
 export { LinearFit, linearLeastSquares } from "./lib/statistics/linear_least_squares.ts";
 export type { LinearLeastSquaresOptions } from "./lib/statistics/linear_least_squares.ts";
 export { NonlinearFit, nonlinearLeastSquares } from "./lib/statistics/nonlinear_least_squares.ts";
-export type { Model, NonlinearLeastSquaresOptions } from "./lib/statistics/nonlinear_least_squares.ts";
+export type {
+  Model,
+  NonlinearLeastSquaresOptions,
+} from "./lib/statistics/nonlinear_least_squares.ts";
 export { correctedAkaike } from "./lib/statistics/information_criterion.ts";
 export { nestedFTest } from "./lib/statistics/nested_f_test.ts";
 export type { FTest, SumOfSquares } from "./lib/statistics/nested_f_test.ts";
 export { runsTest } from "./lib/statistics/runs_test.ts";
 export type { RunsTest } from "./lib/statistics/runs_test.ts";
 export { durbinWatson } from "./lib/statistics/durbin_watson.ts";
+export type { ResidualCheck } from "./lib/statistics/residual_check.ts";
+export type { FitOutcome } from "./lib/statistics/least_squares_fit.ts";
 
 // Runs
 export { Run } from "./lib/run/run.ts";
 export { RunSet } from "./lib/run/run_set.ts";
+export type { Exclusion, RunInput, TimesInput } from "./lib/run/run.ts";
+export type { CensoredReading, Signal, SignalInput, SignalQuantity } from "./lib/run/signal.ts";
 export { readRuns } from "./lib/run/read_runs.ts";
+export type { ReadRunsOptions, RowObjects, RunFacts, RunSource } from "./lib/run/read_runs.ts";
+export { RunFileError } from "./lib/run/run_file_error.ts";
+export type { FilePlace, RunFileFault } from "./lib/run/run_file_error.ts";
+export { toDataFrame } from "./lib/run/data_frame.ts";
+export type { DataFrame } from "./lib/run/data_frame.ts";
 
 // Rate laws
 export { Linearization, linearize } from "./lib/rate_law/linearize.ts";
 export type { LinearizeOptions } from "./lib/rate_law/linearize.ts";
 export { fitRateLaw } from "./lib/rate_law/fit_rate_law.ts";
 export type { FitRateLawOptions, Runs } from "./lib/rate_law/fit_rate_law.ts";
+export type { EndValue, FollowedSignal } from "./lib/rate_law/followed_signal.ts";
+export type { RateEquation } from "./lib/rate_law/rate_equation.ts";
 export { RateLawFit } from "./lib/rate_law/rate_law_fit.ts";
-export type { RunFit } from "./lib/rate_law/rate_law_fit.ts";
+export type { RateLawFitParts, RunFit } from "./lib/rate_law/rate_law_fit.ts";
 export { compareRateLaws } from "./lib/rate_law/compare_rate_laws.ts";
 export type { CompareRateLawsOptions } from "./lib/rate_law/compare_rate_laws.ts";
 export { RateLawComparison } from "./lib/rate_law/rate_law_comparison.ts";
@@ -61,7 +75,11 @@ export type { RateLawRank } from "./lib/rate_law/rate_law_comparison.ts";
 export { fitArrhenius } from "./lib/temperature/fit_arrhenius.ts";
 export type { FitArrheniusOptions, RateConstantRow } from "./lib/temperature/fit_arrhenius.ts";
 export { ArrheniusFit } from "./lib/temperature/arrhenius_fit.ts";
-export type { ArrheniusBand, RateConstantPoint } from "./lib/temperature/arrhenius_fit.ts";
+export type {
+  ArrheniusBand,
+  ArrheniusFitParts,
+  RateConstantPoint,
+} from "./lib/temperature/arrhenius_fit.ts";
 export { PredictedRateConstant } from "./lib/temperature/predicted_rate_constant.ts";
 
 // Figures
@@ -72,5 +90,9 @@ export { plotResiduals } from "./lib/figure/plot_residuals.ts";
 export { plotArrhenius } from "./lib/figure/plot_arrhenius.ts";
 
 // Reports
-export { runNotebook } from "./lib/report/run_notebook.ts";
+export { NotebookCellError, runNotebook } from "./lib/report/run_notebook.ts";
+export type { NotebookProgress, RunNotebookOptions } from "./lib/report/run_notebook.ts";
+export { KernelError } from "./lib/report/kernel.ts";
+export type { Notebook, NotebookCell, Output } from "./lib/report/notebook.ts";
 export { renderReport } from "./lib/report/render_report.ts";
+export type { RenderReportOptions } from "./lib/report/render_report.ts";

@@ -60,7 +60,7 @@ function summary({ html, notebook, evidence }: WrittenReport): string {
       `${line.label.padEnd(widest)}   ${line.text}   (${line.title})`
     ),
     "",
-    `${evidence.cautions.length} cautions, ${serious} of them serious; all stand in the report`,
+    `cautions: ${evidence.cautions.length}, serious among them: ${serious}; all stand in the report`,
     `report:   ${html}`,
     `notebook: ${notebook}`,
     `open ${basename(html)} in a browser`,

@@ -18,7 +18,9 @@ export class Figure {
   readonly alt: string;
   readonly #svg: string;
 
-  /** @param svg standalone SVG markup @param alt what is seen */
+  /** A figure from its markup.
+   *
+   * @param svg standalone SVG markup @param alt what is seen */
   constructor(svg: string, alt: string) {
     this.#svg = svg;
     this.alt = alt;

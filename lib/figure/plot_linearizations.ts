@@ -42,7 +42,7 @@ function drawLine(line: Linearization): ReturnType<typeof drawPanel> {
   return drawPanel({
     width: PANEL_WIDTH,
     height: PANEL_HEIGHT,
-    marginLeft: 66,
+    marginLeft: 70,
     marginBottom: 46,
     marginTop: 30,
     marginRight: 10,
@@ -50,7 +50,11 @@ function drawLine(line: Linearization): ReturnType<typeof drawPanel> {
     y: { nice: true, insetTop: 4, insetBottom: 4 },
     r: { type: "identity" },
     marks: [
-      ...frameMarks({ x: { title: "time", unit: time.unit }, y: { title: line.axis } }),
+      ...frameMarks({
+        x: { title: "time", unit: time.unit },
+        y: { title: line.axis },
+        yLabelOffset: 56,
+      }),
       Plot.line(ends, { x: "x", y: "y", stroke: COLOURS[1], strokeWidth: 1.5 }),
       Plot.dot(points, { x: "x", y: "y", r: "r", stroke: COLOURS[0], fill: "white" }),
       Plot.text([`order ${line.order}`], {

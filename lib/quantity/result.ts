@@ -110,9 +110,9 @@ export abstract class Result {
     ).join("");
     return {
       "text/plain": this.toString(),
-      "text/html": `<div class="ratebook ${this.kind}"><h4>${escapeHtml(this.title)}</h4>${
-        sectionsHtml(this.sections())
-      }${cautions}</div>`,
+      "text/html": `<div class="ratebook ${this.kind}"><p class="result-title"><strong>${
+        escapeHtml(this.title)
+      }</strong></p>${sectionsHtml(this.sections())}${cautions}</div>`,
       [EVIDENCE_MEDIA_TYPE]: this.evidence(),
     };
   }

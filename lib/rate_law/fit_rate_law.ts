@@ -148,7 +148,12 @@ export function fitRateLaw(runs: Runs, options: FitRateLawOptions = {}): RateLaw
     converged: outcome.converged,
     reason: outcome.reason,
     concentrationIsKnown,
-    cautions: [...outcome.cautions, ...cautions, ...leftOutCautions(signals)],
+    cautions: [
+      ...outcome.cautions,
+      ...cautions,
+      ...leftOutCautions(signals),
+      ...cautionsOfRuns(runs),
+    ],
     sources: runs instanceof RunSet ? runs.sources : [],
   });
 }
@@ -169,6 +174,11 @@ export function listRuns(runs: Runs): Run[] {
     }
   }
   return list;
+}
+
+/** Cautions that runs bring along: how they were read, what was excluded from them. */
+export function cautionsOfRuns(runs: Runs): readonly Caution[] {
+  return runs instanceof RunSet ? runs.cautions : listRuns(runs).flatMap((run) => run.cautions);
 }
 
 /** What a fit of several runs says of one of them. */

@@ -30,6 +30,7 @@ export interface LinearizeOptions {
 
 /** A run redrawn so that a rate law of given order is a straight line in time. */
 export class Linearization extends Result {
+  /** Kind of result. */
   override readonly kind: string = "linearization";
   /** The run's id. */
   readonly run: string;
@@ -55,9 +56,12 @@ export class Linearization extends Result {
   readonly rSquared: number;
   /** The equation that defines k. */
   readonly equation: RateEquation;
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[];
 
-  /** @param parts what the line found */
+  /** A line from its parts; `linearize` makes it.
+   *
+   * @param parts what the line found */
   constructor(
     parts:
       & Pick<
@@ -95,6 +99,7 @@ export class Linearization extends Result {
     this.cautions = parts.cautions;
   }
 
+  /** First line of every view. */
   override get title(): string {
     return `${this.axis} against time, order ${this.order}, run ${this.run}`;
   }
@@ -104,6 +109,7 @@ export class Linearization extends Result {
     return this.intercept.value + this.slope.value * time;
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     return [{ kind: "equation", key: "equation", ...this.equation }, {
       kind: "values",

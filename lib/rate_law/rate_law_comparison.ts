@@ -17,6 +17,7 @@ export interface RateLawRank {
 
 /** Rate laws of several orders on the same readings, ranked. */
 export class RateLawComparison extends Result {
+  /** Kind of result. */
   override readonly kind: string = "rate-law-comparison";
   /** The laws, best first; those that did not converge last. */
   readonly ranking: readonly RateLawRank[];
@@ -28,10 +29,14 @@ export class RateLawComparison extends Result {
   readonly wholeOrderTest?: FTest;
   /** The verdict in words. */
   readonly verdict: string;
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[];
+  /** Files behind the result. */
   override readonly sources: readonly Source[];
 
-  /** @param parts ranking and verdict */
+  /** A comparison from its parts; `compareRateLaws` makes it.
+   *
+   * @param parts ranking and verdict */
   constructor(
     parts: Pick<
       RateLawComparison,
@@ -51,16 +56,19 @@ export class RateLawComparison extends Result {
     this.sources = parts.sources;
   }
 
+  /** First line of every view. */
   override get title(): string {
     const { fit } = this.ranking[0];
     const runs = fit.runs.length === 1 ? `run ${fit.runs[0].run}` : `${fit.runs.length} runs`;
     return `Rate laws of ${fit.species} compared, ${runs}`;
   }
 
+  /** Keys of the headline values. */
   protected override headlineKeys(): readonly string[] {
     return ["verdict"];
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const rows = [
       ...this.ranking,

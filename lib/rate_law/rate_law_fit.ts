@@ -55,6 +55,7 @@ export type RateLawFitParts =
 
 /** A direct weighted fit of an integrated rate law to the signals of one or more runs. */
 export class RateLawFit extends Result {
+  /** Kind of result. */
   override readonly kind: string = "rate-law-fit";
   /** What is followed. */
   readonly species: string;
@@ -88,10 +89,14 @@ export class RateLawFit extends Result {
   readonly reason: string;
   /** Whether the reactant's concentration is known, so that k has its full unit. */
   readonly concentrationIsKnown: boolean;
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[];
+  /** Files behind the result. */
   override readonly sources: readonly Source[];
 
-  /** @param parts what the fit found */
+  /** A fit from its parts; `fitRateLaw` makes it.
+   *
+   * @param parts what the fit found */
   constructor(parts: RateLawFitParts) {
     super();
     this.species = parts.species;
@@ -114,6 +119,7 @@ export class RateLawFit extends Result {
     this.sources = parts.sources;
   }
 
+  /** First line of every view. */
   override get title(): string {
     const readings = this.runs.reduce((sum, run) => sum + run.signal.values.length, 0);
     const runs = this.runs.length === 1 ? `run ${this.runs[0].run}` : `${this.runs.length} runs`;
@@ -133,10 +139,12 @@ export class RateLawFit extends Result {
     );
   }
 
+  /** Keys of the headline values. */
   protected override headlineKeys(): readonly string[] {
     return ["rateConstant"];
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const interval = this.rateConstant.interval(0.95).map((v) => formatNumber(v, 4));
     return [

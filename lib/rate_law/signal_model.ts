@@ -32,7 +32,9 @@ export class SignalModel {
   /** Length of the parameter vector. */
   readonly parameterCount: number;
 
-  /** @param signals the signals @param sharedCount number of parameters of the law */
+  /** A model of these signals.
+   *
+   * @param signals the signals @param sharedCount number of parameters of the law */
   constructor(signals: readonly FollowedSignal[], sharedCount: number) {
     this.signals = signals;
     this.count = signals.reduce((sum, signal) => sum + signal.values.length, 0);

@@ -7,7 +7,9 @@ export class CellOutputs {
   #clearBeforeNext = false;
   readonly #displays: Map<string, Output[]>;
 
-  /** @param displays outputs of the whole notebook by display id, so that a later cell can update them */
+  /** Gathers the outputs of one cell.
+   *
+   * @param displays outputs of the whole notebook by display id, so that a later cell can update them */
   constructor(displays: Map<string, Output[]>) {
     this.#displays = displays;
   }

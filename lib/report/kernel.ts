@@ -3,7 +3,9 @@ import { ZmtpSocket } from "./zmtp_socket.ts";
 
 /** A kernel that could not be started, or that ended by itself. */
 export class KernelError extends Error {
-  /** @param message what happened and what to do */
+  /** An error with its message.
+   *
+   * @param message what happened and what to do */
   constructor(message: string) {
     super(message);
     this.name = "KernelError";
@@ -95,7 +97,8 @@ export class Kernel {
 
   /** What the process wrote on standard error. */
   get standardError(): string {
-    return this.#stderr;
+    return this.#stderr.split("\n").filter((line) => !line.includes('"deno jupyter" is unstable'))
+      .join("\n").trim();
   }
 
   /** Sets who gets the messages that the kernel broadcasts. */
@@ -167,7 +170,7 @@ export class Kernel {
   #checkStart(deadline: number): void {
     if (this.#ended) {
       throw new KernelError(
-        `Cannot start the Deno kernel: it ended at once. ${this.#stderr.trim()}`,
+        `Cannot start the Deno kernel: it ended at once. ${this.standardError}`,
       );
     }
     if (Date.now() > deadline) {

@@ -24,7 +24,7 @@ export async function loadMarkdownRenderer(render: EquationRenderer): Promise<Ma
     const end = rest.indexOf(CLOSING[open], open.length);
     const latex = end < 0 ? "" : rest.slice(open.length, end);
     // A dollar sign before a blank or a figure behind the closing one is money, not an equation.
-    if (latex.trim() === "") return false;
+    if (latex.trim() === "" || latex.includes("`")) return false;
     if (open === "$" && (/^\s|\s$/.test(latex) || /^\d/.test(rest.slice(end + 1)))) return false;
     if (!silent) {
       const token = state.push("html_inline", "", 0);

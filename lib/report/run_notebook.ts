@@ -40,7 +40,9 @@ export class NotebookCellError extends Error {
   /** The notebook with the outputs up to and with this cell. */
   readonly partial: Notebook;
 
-  /** @param cell which cell, from 1 @param source its source @param why what happened
+  /** The error of one cell.
+   *
+   * @param cell which cell, from 1 @param source its source @param why what happened
    * @param partial outputs so far */
   constructor(cell: number, source: string, why: string, partial: Notebook) {
     super(`Cell ${cell} stopped the notebook: ${why}\n${quote(source)}`);
@@ -151,7 +153,7 @@ async function runCell(
       throw new KernelError(
         `Cannot go on: the Deno kernel ended by itself while it ran\n${
           quote(source)
-        }\n${kernel.standardError.trim()}`,
+        }\n${kernel.standardError}`,
       );
     }
     return failed;

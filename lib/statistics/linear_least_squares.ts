@@ -26,7 +26,9 @@ export interface LinearLeastSquaresOptions {
 
 /** A linear least-squares fit; coefficients with the intercept first. */
 export class LinearFit extends Result {
+  /** Kind of result. */
   override readonly kind: string = "linear-fit";
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[] = [];
   /** Coefficients with standard errors: intercept (if any), then one a predictor. */
   readonly coefficients: readonly Estimate[];
@@ -42,7 +44,9 @@ export class LinearFit extends Result {
   readonly rSquared: number;
   readonly #intercept: boolean;
 
-  /** @param parts what the fit found */
+  /** A fit from its parts; `linearLeastSquares` makes it.
+   *
+   * @param parts what the fit found */
   constructor(
     parts: Pick<
       LinearFit,
@@ -65,6 +69,7 @@ export class LinearFit extends Result {
     this.#intercept = intercept;
   }
 
+  /** First line of every view. */
   override get title(): string {
     return `Linear least squares, ${this.residuals.length} readings`;
   }
@@ -95,6 +100,7 @@ export class LinearFit extends Result {
     });
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const first = this.#intercept ? 1 : 0;
     const name = (j: number) =>

@@ -39,6 +39,7 @@ export interface NonlinearLeastSquaresOptions {
 
 /** A nonlinear least-squares fit. */
 export class NonlinearFit extends Result {
+  /** Kind of result. */
   override readonly kind: string = "nonlinear-fit";
   /** Estimates with standard errors; no standard error where the fit did not converge. */
   readonly parameters: readonly Estimate[];
@@ -58,9 +59,12 @@ export class NonlinearFit extends Result {
   readonly reason: string;
   /** Iterations taken. */
   readonly iterations: number;
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[];
 
-  /** @param outcome the fit @param labels names and units of the parameters @param residuals unweighted */
+  /** A fit from its outcome; `nonlinearLeastSquares` makes it.
+   *
+   * @param outcome the fit @param labels names and units of the parameters @param residuals unweighted */
   constructor(
     outcome: FitOutcome,
     labels: { names: readonly string[]; units: readonly string[] },
@@ -88,6 +92,7 @@ export class NonlinearFit extends Result {
     this.cautions = outcome.cautions;
   }
 
+  /** First line of every view. */
   override get title(): string {
     const end = this.converged ? "converged" : "NOT CONVERGED";
     return `Nonlinear least squares, ${this.residuals.length} readings, ${end} in ${this.iterations} ` +
@@ -99,6 +104,7 @@ export class NonlinearFit extends Result {
     return correlation(this.covariance);
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     return [{
       kind: "values",

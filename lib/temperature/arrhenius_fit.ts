@@ -64,6 +64,7 @@ export interface ArrheniusFitParts {
 
 /** The Arrhenius equation k = A·exp(−Ea/RT) fitted to rate constants or to runs. */
 export class ArrheniusFit extends Result {
+  /** Kind of result. */
   override readonly kind: string = "arrhenius-fit";
   /** The rate constants, or those of the runs taken one by one. */
   readonly points: readonly RateConstantPoint[];
@@ -93,11 +94,15 @@ export class ArrheniusFit extends Result {
   readonly rateEquation?: RateEquation;
   /** Whether the line was fitted to rate constants or to the runs themselves. */
   readonly origin: "rate constants" | "runs";
+  /** What the reader must know. */
   override readonly cautions: readonly Caution[];
+  /** Files behind the result. */
   override readonly sources: readonly Source[];
   readonly #parts: ArrheniusFitParts;
 
-  /** @param parts the fit about its reference temperature */
+  /** A fit about its reference temperature; `fitArrhenius` makes it.
+   *
+   * @param parts the fit about its reference temperature */
   constructor(parts: ArrheniusFitParts) {
     super();
     this.#parts = parts;
@@ -137,6 +142,7 @@ export class ArrheniusFit extends Result {
     );
   }
 
+  /** First line of every view. */
   override get title(): string {
     const count = this.origin === "runs"
       ? `${this.points.length} runs`
@@ -183,10 +189,12 @@ export class ArrheniusFit extends Result {
     return this.#parts.degreesOfFreedom;
   }
 
+  /** Keys of the headline values. */
   protected override headlineKeys(): readonly string[] {
     return ["activationEnergy", "preExponentialFactor", "rateConstantAtReference"];
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const interval = this.activationEnergy.interval().map((v) => formatNumber(v, 4));
     const hasInterval = Number.isFinite(this.activationEnergy.standardError);

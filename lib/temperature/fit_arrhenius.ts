@@ -73,7 +73,7 @@ export interface FitArrheniusOptions {
  *   { temperature: "45 °C", rateConstant: 8.11e-4, standardError: 1.6e-5 },
  *   { temperature: "55 °C", rateConstant: 2.10e-3, standardError: 4e-5 },
  * ]);
- * strictEqual(fit.activationEnergy.toString(), "81.95 ± 0.73 kJ/mol");
+ * strictEqual(fit.activationEnergy.toString(), "81.90 ± 0.71 kJ/mol");
  * ``` */
 export function fitArrhenius(
   data: readonly RateConstantRow[] | Runs,

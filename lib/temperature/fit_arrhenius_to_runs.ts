@@ -3,7 +3,13 @@ import { GAS_CONSTANT } from "../quantity/constants.ts";
 import { rateConstantUnit } from "../quantity/rate_constant_unit.ts";
 import type { EndValue } from "../rate_law/followed_signal.ts";
 import { followSignal } from "../rate_law/followed_signal.ts";
-import { fitRateLaw, leftOutCautions, listRuns, type Runs } from "../rate_law/fit_rate_law.ts";
+import {
+  cautionsOfRuns,
+  fitRateLaw,
+  leftOutCautions,
+  listRuns,
+  type Runs,
+} from "../rate_law/fit_rate_law.ts";
 import { rateEquation } from "../rate_law/rate_equation.ts";
 import { type SharedLaw, SignalModel } from "../rate_law/signal_model.ts";
 import { RunSet } from "../run/run_set.ts";
@@ -143,6 +149,7 @@ export function fitArrheniusToRuns(runs: Runs, options: RunsArrheniusOptions): A
       ...outcome.cautions,
       ...(scatter ? [scatterCaution(lackOfFit)] : []),
       ...leftOutCautions(signals),
+      ...cautionsOfRuns(runs),
     ],
     sources: runs instanceof RunSet ? runs.sources : [],
   });

@@ -10,7 +10,9 @@ export class PredictedRateConstant extends Estimate {
   /** How far outside the tested range, and what follows. */
   readonly cautions: readonly Caution[];
 
-  /** @param input the estimate @param temperature K @param cautions what its user must know */
+  /** A prediction; `ArrheniusFit.rateConstantAt` makes it.
+   *
+   * @param input the estimate @param temperature K @param cautions what its user must know */
   constructor(input: EstimateInput, temperature: number, cautions: readonly Caution[]) {
     super(input);
     this.temperature = temperature;

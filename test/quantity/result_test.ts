@@ -75,7 +75,7 @@ describe("one list of sections gives every view", () => {
 
   test("the HTML is escaped, title and cautions too", () => {
     const html = bundle["text/html"];
-    expect(html).toContain("<h4>Decay of A &amp; B</h4>");
+    expect(html).toContain("<strong>Decay of A &amp; B</strong>");
     expect(html).toContain("First order &lt;likely&gt;.");
     expect(html).toContain("Serious caution: Followed for &lt; 1 half-life");
     expect(html).not.toMatch(/<(script|style|link)/);

@@ -1,0 +1,144 @@
+import { afterEach, describe, expect, test } from "vitest";
+import { KernelError } from "../../lib/report/kernel.ts";
+import { joinText, type Notebook, type Output } from "../../lib/report/notebook.ts";
+import { NotebookCellError, runNotebook } from "../../lib/report/run_notebook.ts";
+import { notebookFile } from "./notebook_files.ts";
+
+let dispose: (() => Promise<void>) | undefined;
+afterEach(async () => {
+  await dispose?.();
+  dispose = undefined;
+});
+
+async function written(cells: readonly string[]): Promise<string> {
+  const file = await notebookFile(cells);
+  dispose = file.dispose;
+  return file.path;
+}
+
+function outputs(notebook: Notebook, cell: number): readonly Output[] {
+  const found = notebook.cells[cell];
+  if (found.cell_type !== "code") throw new TypeError(`cell ${cell} is ${found.cell_type}`);
+  return found.outputs;
+}
+
+function text(output: Output): string {
+  return output.output_type === "stream"
+    ? joinText(output.text)
+    : output.output_type === "error"
+    ? output.ename
+    : String(output.data["text/plain"]);
+}
+
+describe("every output is kept", () => {
+  test("60 displays, 200 lines, a value after a top-level await: ten runs in a row", async () => {
+    const path = await written([
+      `for (let i = 0; i < 60; i++) {
+         await Deno.jupyter.display({ "text/plain": "display " + i }, { raw: true });
+       }`,
+      `for (let i = 0; i < 200; i++) console.log("line", i);`,
+      `const later = await new Promise((resolve) => setTimeout(() => resolve(42), 5));
+       later`,
+      `for (let i = 0; i < 60; i++) Deno.jupyter.display({ "text/plain": "d" + i }, { raw: true });
+       for (let i = 0; i < 200; i++) console.log(i);
+       later + 1`,
+    ]);
+    for (let run = 0; run < 10; run++) {
+      const executed = await runNotebook(path);
+      const displays = outputs(executed, 0).map(text).filter((t) => t.startsWith("display"));
+      expect(displays).toEqual(Array.from({ length: 60 }, (_, i) => `display ${i}`));
+      expect(outputs(executed, 1).map(text).join("")).toBe(
+        Array.from({ length: 200 }, (_, i) => `line ${i}\n`).join(""),
+      );
+      expect(text(outputs(executed, 2).at(-1)!)).toContain("42");
+      const mixed = outputs(executed, 3).map(text);
+      expect(mixed.filter((t) => /^d\d+$/.test(t)).length).toBe(60);
+      expect(mixed.join("").match(/^\d+$/gm)?.length).toBe(200);
+      expect(mixed.at(-1)).toContain("43");
+    }
+  });
+
+  test("streams are told apart, updates and clearing are obeyed", async () => {
+    const path = await written([
+      `console.log("out"); console.error("err"); console.log("again");`,
+      `await Deno.jupyter.broadcast("display_data",
+         { data: { "text/plain": "old" }, metadata: {}, transient: { display_id: "x" } });`,
+      `await Deno.jupyter.broadcast("update_display_data",
+         { data: { "text/plain": "new" }, metadata: {}, transient: { display_id: "x" } });`,
+      `console.log("gone"); await Deno.jupyter.broadcast("clear_output", { wait: true });
+       console.log("stays");`,
+    ]);
+    const executed = await runNotebook(path);
+    expect(outputs(executed, 0).map((o) => o.output_type === "stream" ? [o.name, o.text] : o))
+      .toEqual([["stdout", "out\n"], ["stderr", "err\n"], ["stdout", "again\n"]]);
+    expect(outputs(executed, 1).map(text)).toEqual(["new"]);
+    expect(outputs(executed, 3).map(text)).toEqual(["stays\n"]);
+  });
+
+  test("cells see the names of earlier ones, and the library by its name", async () => {
+    const path = await written([
+      `import { readQuantity } from "ratebook"; const kelvin = readQuantity("25 °C", "K", "T");`,
+      `kelvin`,
+    ]);
+    expect(text(outputs(await runNotebook(path), 1)[0])).toContain("298.15");
+  });
+});
+
+describe("what stops a notebook", () => {
+  test("a cell that throws, with its number, its source and the message", async () => {
+    const path = await written([
+      "# A heading",
+      `console.log("before");`,
+      `throw new RangeError("no good: 7");`,
+      `console.log("never");`,
+    ]);
+    const error = await runNotebook(path).catch((e) => e);
+    expect(error).toBeInstanceOf(NotebookCellError);
+    expect(error.cell).toBe(3);
+    expect(error.message).toContain("RangeError: no good: 7");
+    expect(error.message).toContain("| throw new RangeError");
+    expect(text(outputs(error.partial, 1)[0])).toBe("before\n");
+    expect(outputs(error.partial, 2)[0].output_type).toBe("error");
+    expect(outputs(error.partial, 3)).toEqual([]);
+  });
+
+  test("a cell that runs too long", async () => {
+    const path = await written([`while (true) {}`]);
+    await expect(runNotebook(path, { cellTimeout: 0.5 })).rejects.toThrow(
+      /Cell 1.*longer than 0\.5 s/,
+    );
+  });
+
+  test("a kernel that ends by itself", async () => {
+    const path = await written([`console.log(1); Deno.exit(3);`]);
+    await expect(runNotebook(path)).rejects.toBeInstanceOf(KernelError);
+  });
+
+  test("an abort", async () => {
+    const stop = new AbortController();
+    const path = await written([`await new Promise((resolve) => setTimeout(resolve, 60_000));`]);
+    const progress = { cellStarted: () => setTimeout(() => stop.abort(), 50), finished() {} };
+    const error = await runNotebook(path, { signal: stop.signal, progress }).catch((e) => e);
+    expect(error.name).toBe("AbortError");
+  });
+
+  test("a file that is no notebook", async () => {
+    const path = await written([]);
+    await Deno.writeTextFile(path, `{"nbformat": 3}`);
+    await expect(runNotebook(path)).rejects.toThrow(/made\.ipynb: expected nbformat 4/);
+    await Deno.writeTextFile(path, `time,A`);
+    await expect(runNotebook(path)).rejects.toThrow(/is not JSON/);
+  });
+});
+
+test("progress is told cell by cell", async () => {
+  const path = await written(["# Words", "1", "2"]);
+  const told: unknown[] = [];
+  await runNotebook(path, {
+    progress: {
+      cellStarted: (index, total, source) => told.push([index, total, source]),
+      finished: () => told.push("finished"),
+    },
+  });
+  expect(told).toEqual([[0, 2, "1"], [1, 2, "2"], "finished"]);
+});
