@@ -48,12 +48,22 @@ export type { FitOutcome } from "./lib/statistics/least_squares_fit.ts";
 // Runs
 export { Run } from "./lib/run/run.ts";
 export { RunSet } from "./lib/run/run_set.ts";
+export type { ReadingRow } from "./lib/run/reading_rows.ts";
 export type { Exclusion, RunInput, TimesInput } from "./lib/run/run.ts";
-export type { CensoredReading, Signal, SignalInput, SignalQuantity } from "./lib/run/signal.ts";
+export type {
+  CensoredReading,
+  SharedUncertainty,
+  Signal,
+  SignalInput,
+  SignalQuantity,
+} from "./lib/run/signal.ts";
 export { readRuns } from "./lib/run/read_runs.ts";
 export type { ReadRunsOptions, RowObjects, RunFacts, RunSource } from "./lib/run/read_runs.ts";
 export { RunFileError } from "./lib/run/run_file_error.ts";
 export type { FilePlace, RunFileFault } from "./lib/run/run_file_error.ts";
+export type { TextSource } from "./lib/run/source_text.ts";
+export type { Separator } from "./lib/run/table.ts";
+export type { DecimalMark } from "./lib/run/number_cell.ts";
 export { toDataFrame } from "./lib/run/data_frame.ts";
 export type { DataFrame } from "./lib/run/data_frame.ts";
 
@@ -85,14 +95,22 @@ export { PredictedRateConstant } from "./lib/temperature/predicted_rate_constant
 // Figures
 export { Figure } from "./lib/figure/figure.ts";
 export { plotRuns } from "./lib/figure/plot_runs.ts";
+export type { PlotRunsOptions } from "./lib/figure/plot_runs.ts";
 export { plotLinearizations } from "./lib/figure/plot_linearizations.ts";
 export { plotResiduals } from "./lib/figure/plot_residuals.ts";
 export { plotArrhenius } from "./lib/figure/plot_arrhenius.ts";
+export type { PlotArrheniusOptions } from "./lib/figure/plot_arrhenius.ts";
 
 // Reports
 export { NotebookCellError, runNotebook } from "./lib/report/run_notebook.ts";
 export type { NotebookProgress, RunNotebookOptions } from "./lib/report/run_notebook.ts";
 export { KernelError } from "./lib/report/kernel.ts";
-export type { Notebook, NotebookCell, Output } from "./lib/report/notebook.ts";
+export type {
+  MimeBundle,
+  MultilineText,
+  Notebook,
+  NotebookCell,
+  Output,
+} from "./lib/report/notebook.ts";
 export { renderReport } from "./lib/report/render_report.ts";
 export type { RenderReportOptions } from "./lib/report/render_report.ts";

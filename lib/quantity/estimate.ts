@@ -58,7 +58,9 @@ export class Estimate {
   /** On which scale the error is symmetric. */
   readonly symmetricOn: "linear" | "logarithmic";
 
-  /** @param input value, standard error and unit
+  /** An estimate from its parts.
+   *
+   * @param input value, standard error and unit
    * @throws {RangeError} if the standard error is negative
    * @throws {UnitError} if the unit is not known */
   constructor(input: EstimateInput) {

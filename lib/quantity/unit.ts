@@ -24,7 +24,9 @@ export class UnitError extends RangeError {
   /** The unit, or the quantity with its unit, as it was written. */
   readonly text: string;
 
-  /** @param message what is wrong and what to write @param text the offending text */
+  /** An error with its message.
+   *
+   * @param message what is wrong and what to write @param text the offending text */
   constructor(message: string, text: string) {
     super(message);
     this.name = "UnitError";

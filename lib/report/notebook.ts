@@ -40,9 +40,13 @@ export type NotebookCell =
 
 /** A notebook. */
 export interface Notebook {
+  /** Its cells. */
   cells: readonly NotebookCell[];
+  /** Metadata of the whole. */
   metadata: Readonly<Record<string, unknown>>;
+  /** Major version of the format. */
   nbformat: 4;
+  /** Minor version of the format. */
   nbformat_minor: number;
 }
 

@@ -59,6 +59,7 @@ export interface Exclusion {
  * strictEqual(run.signal().values[0], 0.01);
  * ``` */
 export class Run extends Result {
+  /** Kind of result. */
   override readonly kind: string = "run";
   /** What the run is called. */
   readonly id: string;
@@ -77,7 +78,9 @@ export class Run extends Result {
   /** What a reader must know about how the run came about. */
   readonly notes: readonly Caution[];
 
-  /** @param input the run
+  /** A run from its facts and readings.
+   *
+   * @param input the run
    * @throws {TypeError} on a missing id or a value of the wrong type
    * @throws {RangeError} on times that run backwards, lengths that do not match, a temperature at or
    * below 0 K, a negative concentration, or two signals of one name
@@ -157,10 +160,12 @@ export class Run extends Result {
     return this.with({ exclusions: [...this.exclusions, ...added] });
   }
 
+  /** First line of every view. */
   override get title(): string {
     return `Run ${this.id}, ${this.times.length} readings`;
   }
 
+  /** What the reader must know. */
   override get cautions(): readonly Caution[] {
     const shared = this.signals.flatMap((signal) => sharedCaution(this.id, signal) ?? []);
     if (this.exclusions.length === 0) return [...this.notes, ...shared];
@@ -175,6 +180,7 @@ export class Run extends Result {
     }];
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const facts = [
       ...(this.temperature === undefined ? [] : [{

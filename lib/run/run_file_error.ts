@@ -25,7 +25,9 @@ export class RunFileError extends SyntaxError {
   /** All faults found. */
   readonly faults: readonly RunFileFault[];
 
-  /** @param faults at least one */
+  /** The error of these faults.
+   *
+   * @param faults at least one */
   constructor(faults: readonly RunFileFault[]) {
     const shown = faults.slice(0, MOST_SHOWN).map(faultText);
     const more = faults.length - shown.length;
@@ -47,6 +49,11 @@ export class RunFileError extends SyntaxError {
   /** Column of the first fault, from 1. */
   get column(): number | undefined {
     return this.faults[0].column;
+  }
+
+  /** Header of the first fault's column. */
+  get header(): string | undefined {
+    return this.faults[0].header;
   }
 
   /** Cell of the first fault. */

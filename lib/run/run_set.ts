@@ -7,6 +7,7 @@ import { Run } from "./run.ts";
 
 /** Several runs, with the files they came from. */
 export class RunSet extends Result implements Iterable<Run> {
+  /** Kind of result. */
   override readonly kind: string = "run-set";
   /** The runs, in the order of the file. */
   readonly runs: readonly Run[];
@@ -14,7 +15,9 @@ export class RunSet extends Result implements Iterable<Run> {
   override readonly sources: readonly Source[];
   readonly #notes: readonly Caution[];
 
-  /** @param runs the runs @param sources the files behind them @param notes how they were read
+  /** A set of these runs.
+   *
+   * @param runs the runs @param sources the files behind them @param notes how they were read
    * @throws {TypeError} if something else is among them @throws {RangeError} if two have one id */
   constructor(
     runs: readonly Run[],
@@ -84,15 +87,18 @@ export class RunSet extends Result implements Iterable<Run> {
     return readingRows(this.runs);
   }
 
+  /** First line of every view. */
   override get title(): string {
     const files = this.sources.map((source) => source.name).join(", ");
     return `${this.length} run${this.length === 1 ? "" : "s"}${files ? ` from ${files}` : ""}`;
   }
 
+  /** What the reader must know. */
   override get cautions(): readonly Caution[] {
     return [...this.#notes, ...this.runs.flatMap((run) => run.cautions)];
   }
 
+  /** The content, in reading order. */
   override sections(): Section[] {
     const species = [
       ...new Set(this.runs.flatMap((run) => Object.keys(run.initialConcentrations))),

@@ -2,8 +2,9 @@
 export interface RunsTest {
   /** Number of unbroken stretches of one sign. */
   readonly runs: number;
-  /** Residuals above and below zero; zeros are left out. */
+  /** Residuals above zero. */
   readonly above: number;
+  /** Residuals below zero; zeros are left out. */
   readonly below: number;
   /** Probability of so few stretches (or fewer) if signs come in random order. */
   readonly probability: number;

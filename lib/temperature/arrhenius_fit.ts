@@ -37,28 +37,39 @@ export interface ArrheniusBand {
 /** What an {@link ArrheniusFit} is made from: ln k_ref and Ea at the reference temperature where the
  * two do not correlate. */
 export interface ArrheniusFitParts {
+  /** Rate constants behind the line. */
   readonly points: readonly RateConstantPoint[];
-  /** K. */
+  /** Temperature at which ln k and Ea do not correlate, K. */
   readonly referenceTemperature: number;
   /** ln of k at the reference temperature, k in `unit`. */
   readonly logReference: number;
+  /** Its variance. */
   readonly logReferenceVariance: number;
-  /** J/mol. */
+  /** Ea, J/mol. */
   readonly activationEnergy: number;
+  /** Its variance, (J/mol)². */
   readonly activationEnergyVariance: number;
   /** Variance of ln k of a single point about the line. */
   readonly pointVariance: number;
   /** Infinite for trusted stated uncertainties. */
   readonly degreesOfFreedom: number;
+  /** Unit of k. */
   readonly unit: string;
   /** ln k less line, one a point. */
   readonly residuals: Float64Array;
+  /** Σ(residual/u)², where uncertainties were stated. */
   readonly chiSquare?: number;
+  /** Its probability. */
   readonly chiSquareProbability?: number;
+  /** F test of the line against the runs, for a fit to runs. */
   readonly lackOfFit?: FTest;
+  /** The rate equation that defines k. */
   readonly equation?: RateEquation;
+  /** What the line was fitted to. */
   readonly origin: "rate constants" | "runs";
+  /** What the reader must know. */
   readonly cautions: readonly Caution[];
+  /** Files behind it. */
   readonly sources?: readonly Source[];
 }
 
