@@ -1,4 +1,4 @@
-import { UnitError } from "../quantity/unit.ts";
+import { commensurable, parseUnit, UnitError } from "../quantity/unit.ts";
 import { type Column, readHeader } from "./header.ts";
 import { type DecimalMark, decimalMark, type NumberCell, readNumberCell } from "./number_cell.ts";
 import { RunFileError, type RunFileFault } from "./run_file_error.ts";
@@ -39,20 +39,62 @@ export function readColumns(table: Table): ReadTable {
     }
   });
   columns.forEach((column, i) => {
-    if (column.role !== "signal") return;
-    const first = columns.findIndex((c) => c.role === "signal" && c.name === column.name);
-    if (first === i || table.headers[first] === table.headers[i]) return;
-    faults.push({
-      file: table.file,
-      line: table.headerLine,
-      column: i + 1,
-      cell: table.headers[i],
-      message: `"${column.name}" has two columns with different units (the other is ` +
-        `"${table.headers[first]}"); keep one`,
-    });
+    const message = repeated(columns, i, table.headers) ?? strayUncertainty(columns, column);
+    if (message === undefined) return;
+    const [line, cell] = [table.headerLine, table.headers[i]];
+    faults.push({ file: table.file, line, column: i + 1, cell, message });
   });
   if (faults.length > 0) throw new RunFileError(faults);
   return { table, columns };
+}
+
+/** What a column is about: two columns of one subject contradict each other. */
+function subject(column: Column): string | undefined {
+  if (column.role === "signal" || column.role === "property") return `name ${column.name}`;
+  if (column.role === "initial") return `initial ${column.species}`;
+  return column.role === "uncertainty" ? `u ${column.signal}` : undefined;
+}
+
+function repeated(
+  columns: readonly Column[],
+  index: number,
+  headers: readonly string[],
+): string | undefined {
+  const own = subject(columns[index]);
+  const first = columns.findIndex((column) => subject(column) === own);
+  if (own === undefined || first === index || headers[first] === headers[index]) return undefined;
+  return `it is there twice, with different units (the other is "${headers[first]}"); keep one`;
+}
+
+function strayUncertainty(columns: readonly Column[], column: Column): string | undefined {
+  if (column.role !== "uncertainty") return undefined;
+  const signal = columns.find((c) => c.role === "signal" && c.name === column.signal);
+  if (signal?.role !== "signal") {
+    const names = columns.flatMap((c) => c.role === "signal" ? [`u(${c.name})`] : []);
+    return `there is no signal "${column.signal}" with a unit${
+      names.length > 0 ? `; write ${names.join(" or ")}` : ""
+    }`;
+  }
+  if (commensurable(parseUnit(column.unit), parseUnit(signal.unit))) return undefined;
+  return `${column.unit} does not fit the unit of "${column.signal}", ${signal.unit}`;
+}
+
+/** A column of standard uncertainties with its unit. */
+export interface UncertaintyColumn {
+  /** Which column. */
+  readonly index: number;
+  /** Its unit. */
+  readonly unit: string;
+}
+
+/** The column with the standard uncertainties of a signal, if there is one. */
+export function uncertaintyColumn(
+  columns: readonly Column[],
+  signal: string,
+): UncertaintyColumn | undefined {
+  const index = columns.findIndex((c) => c.role === "uncertainty" && c.signal === signal);
+  const column = columns[index];
+  return column?.role === "uncertainty" ? { index, unit: column.unit } : undefined;
 }
 
 /** Roles whose cells must be numbers. */
@@ -67,7 +109,8 @@ const NUMBER_ROLES = new Set<Column["role"]>([
 /** Reads the number cells of a table with one decimal mark for the whole file. */
 export class NumberReader {
   readonly #table: Table;
-  readonly #mark: DecimalMark;
+  /** Decimal mark of the file. */
+  readonly mark: DecimalMark;
   readonly #faults: RunFileFault[] = [];
 
   /** @param table the table @param columns number columns @param given decimal mark if stated
@@ -82,14 +125,14 @@ export class NumberReader {
     const cells = [...extra, ...table.rows].flatMap((row) =>
       columns.map((column) => ({ text: row.cells[column], place: placeOf(table, row, column) }))
     );
-    this.#mark = decimalMark(cells, given);
+    this.mark = decimalMark(cells, given);
   }
 
   /** A cell; a fault is kept and the cell taken as empty, so that all faults are told at once. */
   read(row: TableRow, column: number): NumberCell {
     try {
       const cell = { text: row.cells[column], place: placeOf(this.#table, row, column) };
-      return readNumberCell(cell, this.#mark);
+      return readNumberCell(cell, this.mark);
     } catch (error) {
       if (!(error instanceof RunFileError)) throw error;
       this.#faults.push(...error.faults);

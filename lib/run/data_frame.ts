@@ -1,5 +1,7 @@
+import type { DecimalMark } from "./number_cell.ts";
 import { readingRows } from "./reading_rows.ts";
 import type { Run } from "./run.ts";
+import { cellText } from "./row_objects.ts";
 import type { Table } from "./table.ts";
 
 /** The data-frame package. It stands here and not in the import map, and is no literal in the import, so that
@@ -23,17 +25,15 @@ export function isDataFrame(value: unknown): value is DataFrame {
 }
 
 /** The table of a data frame; missing values become empty cells. */
-export function tableOfDataFrame(frame: DataFrame): Table {
+export function tableOfDataFrame(frame: DataFrame, decimal?: DecimalMark): Table {
   return {
     file: "data frame",
-    headers: frame.columns.map(String),
+    headers: frame.columns.map((header) => String(header).trim()),
     headerLine: 0,
     rows: frame.values.map((row, i) => ({
       line: i + 1,
-      cells: (row as unknown[]).map((value) =>
-        value === null || value === undefined || Number.isNaN(value) ? "" : String(value).trim()
-      ),
-    })),
+      cells: (row as unknown[]).map((value) => cellText(value, decimal)),
+    })).filter((row) => row.cells.some((cell) => cell !== "")),
   };
 }
 

@@ -9,6 +9,7 @@ export type Column =
   | { readonly role: "initial"; readonly species: string; readonly unit: string }
   | { readonly role: "uncertainty"; readonly signal: string; readonly unit: string }
   | { readonly role: "signal"; readonly name: string; readonly unit: string }
+  | { readonly role: "exclusion" }
   | { readonly role: "property"; readonly name: string };
 
 /** A header taken apart. */
@@ -40,12 +41,14 @@ export function splitHeader(text: string): Header {
 export function readHeader(text: string): Column {
   const { name, unit } = splitHeader(text);
   if (unit !== undefined) parseUnit(unit);
-  if (/^(time|t)$/i.test(name)) {
+  // By IUPAC's symbols t is time and T temperature.
+  if (/^time$/i.test(name) || name === "t") {
     return { role: "time", unit: needUnit(text, name, unit, "s", "min") };
   }
   if (/^(run|run id|experiment)$/i.test(name) && unit === undefined) return { role: "run" };
   if (/^species$/i.test(name) && unit === undefined) return { role: "species" };
-  if (/^(temperature|temp\.?|T)$/i.test(name) && name !== "t") {
+  if (/^(left out|excluded)$/i.test(name) && unit === undefined) return { role: "exclusion" };
+  if (/^(temperature|temp\.?)$/i.test(name) || name === "T") {
     return { role: "temperature", unit: needUnit(text, name, unit, "K", "°C") };
   }
   const initial = /^initial\s+(.+)$/i.exec(name) ?? /^\[(.+)\](?:0|₀)$/.exec(name);
@@ -56,7 +59,7 @@ export function readHeader(text: string): Column {
   const uncertainty = /^u\((.+)\)$/i.exec(name);
   if (uncertainty) {
     if (unit === undefined) {
-      throw new UnitError(`the unit is missing; write "${text} [${"mmol/L"}]"`, text);
+      throw new UnitError(`the unit is missing; write "${text} [mmol/L]"`, text);
     }
     return { role: "uncertainty", signal: uncertainty[1], unit };
   }

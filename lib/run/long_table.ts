@@ -1,9 +1,18 @@
-import { numberColumns, NumberReader, onlyColumn, type ReadTable } from "./column_reader.ts";
+import {
+  numberColumns,
+  NumberReader,
+  onlyColumn,
+  type ReadTable,
+  uncertaintyColumn,
+} from "./column_reader.ts";
 import type { Column } from "./header.ts";
 import type { DecimalMark } from "./number_cell.ts";
+import { propertyReader } from "./property_value.ts";
 import { Run, type RunInput } from "./run.ts";
 import { RunFileError } from "./run_file_error.ts";
-import type { CensoredReading, SignalInput } from "./signal.ts";
+import type { SignalInput } from "./signal.ts";
+import { readSignalCells, readTimes } from "./signal_cells.ts";
+import { readUnderEachOther } from "./species_rows.ts";
 import type { Table, TableRow } from "./table.ts";
 
 /** Reads a table with a row a reading: one run, or several told apart by a column `run`; signals side by
@@ -23,17 +32,28 @@ export function readLongTable(
   if (timeColumn === undefined) throw missingTime(table);
   const runColumn = onlyColumn(read, "run");
   const speciesColumn = onlyColumn(read, "species");
+  const exclusionColumn = onlyColumn(read, "exclusion");
   const numbers = new NumberReader(table, numberColumns(columns), decimal);
+  const properties = columns.map((column, i) =>
+    column.role === "property"
+      ? propertyReader(table.rows.map((row) => row.cells[i]), numbers.mark)
+      : undefined
+  );
   const byRun = Map.groupBy(
     table.rows,
     (row) => runColumn === undefined ? single : row.cells[runColumn],
   );
   const runs = [...byRun].map(([id, rows]) => {
     if (id === "") numbers.fault(rows[0], runColumn!, "the run's name is missing; write it");
-    const facts = readFacts(id, rows, columns, numbers);
-    return speciesColumn === undefined
-      ? { ...facts, ...readSideBySide(rows, columns, timeColumn, numbers) }
-      : { ...facts, ...readUnderEachOther(rows, columns, timeColumn, speciesColumn, numbers) };
+    const facts = readFacts(id, rows, columns, properties, numbers);
+    if (speciesColumn !== undefined) {
+      return { ...facts, ...readUnderEachOther(rows, columns, timeColumn, speciesColumn, numbers) };
+    }
+    const exclusions = exclusionColumn === undefined ? [] : rows.flatMap((row, index) => {
+      const reason = row.cells[exclusionColumn];
+      return reason === "" ? [] : [{ index, reason }];
+    });
+    return { ...facts, ...readSideBySide(rows, columns, timeColumn, numbers), exclusions };
   });
   numbers.finish();
   return runs;
@@ -56,6 +76,7 @@ function readFacts(
   id: string,
   rows: readonly TableRow[],
   columns: readonly Column[],
+  asProperty: readonly (((cell: string) => string | number) | undefined)[],
   numbers: NumberReader,
 ): Facts {
   let temperature: string | undefined;
@@ -65,7 +86,11 @@ function readFacts(
     if (!["temperature", "initial", "property"].includes(column.role)) return;
     const first = rows.find((row) => row.cells[i] !== "");
     if (!first) return;
-    const other = rows.find((row) => row.cells[i] !== "" && row.cells[i] !== first.cells[i]);
+    const value = column.role === "property" ? NaN : numbers.required(first, i);
+    const other = [...new Map(rows.map((row) => [row.cells[i], row])).values()].find((row) =>
+      row.cells[i] !== "" && row.cells[i] !== first.cells[i] &&
+      (column.role === "property" || numbers.required(row, i) !== value)
+    );
     if (other) {
       numbers.fault(
         other,
@@ -79,10 +104,9 @@ function readFacts(
       );
     }
     if (column.role === "property") {
-      properties[column.name] = first.cells[i];
+      properties[column.name] = asProperty[i]!(first.cells[i]);
       return;
     }
-    const value = numbers.required(first, i);
     if (Number.isNaN(value)) return;
     if (column.role === "temperature") temperature = `${value} ${column.unit}`;
     if (column.role === "initial") {
@@ -92,129 +116,24 @@ function readFacts(
   return { id, temperature, initialConcentrations, properties };
 }
 
-type Readings = Pick<RunInput, "times" | "signals">;
-
 function readSideBySide(
   rows: readonly TableRow[],
   columns: readonly Column[],
   timeColumn: number,
   numbers: NumberReader,
-): Readings {
+): Pick<RunInput, "times" | "signals"> {
   const times = readTimes(rows, timeColumn, numbers);
+  const time = columns[timeColumn];
+  const timeUnit = "unit" in time ? time.unit : "s";
   const signals = columns.flatMap((column, i): SignalInput[] => {
     if (column.role !== "signal") return [];
-    const u = columns.findIndex((c) => c.role === "uncertainty" && c.signal === column.name);
-    const signal = readSignalCells(rows, i, column, u < 0 ? undefined : u, numbers);
+    const u = uncertaintyColumn(columns, column.name);
+    const signal = readSignalCells(rows, i, column, u, numbers);
     // A run that has no reading of a signal does not have the signal.
     const empty = signal.values.every((v) => Number.isNaN(v)) && signal.censored!.length === 0;
     return empty ? [] : [signal];
   });
-  return { times: { values: times, unit: unitOf(columns[timeColumn]) }, signals };
-}
-
-function readUnderEachOther(
-  rows: readonly TableRow[],
-  columns: readonly Column[],
-  timeColumn: number,
-  speciesColumn: number,
-  numbers: NumberReader,
-): Readings {
-  const valueColumn = columns.findIndex((column) => column.role === "signal");
-  const column = columns[valueColumn];
-  if (column?.role !== "signal" || columns.filter((c) => c.role === "signal").length !== 1) {
-    numbers.fault(
-      rows[0],
-      speciesColumn,
-      `a table with a column "species" needs exactly one column of values, such as "value [mmol/L]"`,
-    );
-    return { times: [], signals: [] };
-  }
-  const u = columns.findIndex((c) => c.role === "uncertainty");
-  const bySpecies = Map.groupBy(rows, (row) => row.cells[speciesColumn]);
-  const unit = unitOf(columns[timeColumn]);
-  const read = [...bySpecies].map(([name, own]) => ({
-    times: readTimes(own, timeColumn, numbers),
-    signal: readSignalCells(own, valueColumn, { ...column, name }, u < 0 ? undefined : u, numbers),
-  }));
-  const times = [...new Set(read.flatMap((r) => r.times))].sort((a, b) => a - b);
-  const signals = read.map(({ times: own, signal }): SignalInput => {
-    const place = own.map((time) => times.indexOf(time));
-    const spread = (values: ArrayLike<number | null>) => {
-      const all = new Array<number>(times.length).fill(NaN);
-      place.forEach((at, i) => all[at] = values[i] ?? NaN);
-      return all;
-    };
-    return {
-      ...signal,
-      values: spread(signal.values),
-      standardUncertainties: signal.standardUncertainties && spread(signal.standardUncertainties),
-      censored: signal.censored?.map((c) => ({ ...c, index: place[c.index] })),
-    };
-  });
-  return { times: { values: times, unit }, signals };
-}
-
-function unitOf(column: Column): string {
-  return "unit" in column ? column.unit : "s";
-}
-
-/** Times of rows, which may not run backwards. */
-export function readTimes(
-  rows: readonly TableRow[],
-  column: number,
-  numbers: NumberReader,
-): number[] {
-  const times = rows.map((row) => numbers.required(row, column));
-  times.forEach((time, i) => {
-    if (i > 0 && time < times[i - 1]) {
-      numbers.fault(
-        rows[i],
-        column,
-        `time runs backwards, from ${times[i - 1]} in line ${
-          rows[i - 1].line
-        }; put the readings in ` +
-          `order, or name the runs in a column "run" if another one begins here`,
-      );
-    }
-  });
-  return times;
-}
-
-/** Cells of one signal, with its uncertainties where they have a column. */
-export function readSignalCells(
-  rows: readonly TableRow[],
-  valueColumn: number,
-  column: { readonly name: string; readonly unit: string },
-  uncertaintyColumn: number | undefined,
-  numbers: NumberReader,
-): SignalInput {
-  const censored: CensoredReading[] = [];
-  const values = rows.map((row, index) => {
-    const cell = numbers.read(row, valueColumn);
-    if (cell.kind === "censored") {
-      censored.push({
-        index,
-        text: cell.text,
-        ...(cell.limit === undefined ? {} : { limit: cell.limit }),
-      });
-    }
-    return cell.kind === "number" ? cell.value : NaN;
-  });
-  const uncertainties = uncertaintyColumn === undefined ? undefined : rows.map((row, i) => {
-    if (Number.isNaN(values[i])) return NaN;
-    const u = numbers.required(row, uncertaintyColumn);
-    if (u <= 0) {
-      numbers.fault(row, uncertaintyColumn, "a standard uncertainty must be more than 0");
-    }
-    return u;
-  });
-  return {
-    name: column.name,
-    unit: column.unit,
-    values,
-    ...(uncertainties === undefined ? {} : { standardUncertainties: uncertainties }),
-    censored,
-  };
+  return { times: { values: times, unit: timeUnit }, signals };
 }
 
 /** Makes runs; what a run refuses is told with the file's name.

@@ -14,8 +14,9 @@ const COMMA = /^[+\-−]?(\d+,?\d*|,\d+)([eE][+\-−]?\d+)?$/;
 /** One mark, three digits behind it, no leading zero: 1,234 may be 1.234 or 1234. */
 const COULD_BE_THOUSANDS = /^[+\-−]?[1-9]\d{0,2}[.,]\d{3}$/;
 const GROUPED = /^[+\-−]?\d{1,3}([.,]\d{3})*[.,]\d+$/;
-const CENSORED =
-  /^(?:<\s*(?:(.+))?|n\.?\s?d\.?|bdl|bld|<?\s*lo[dq]|below\s+lo[dq]|not\s+detected)$/i;
+const CENSORED = /^(?:n\.?\s?d\.?|b[dq]l|b?lo[dq]|below\s+lo[dq]|not\s+detected)$/i;
+const BELOW = /^<\s*(.*)$/;
+const LIMIT_WORD = /^(?:|lo[dq]|[dq]l|mdl|limit)$/i;
 
 /** A cell with its place. */
 export interface PlacedCell {
@@ -71,15 +72,18 @@ export function readNumberCell(cell: PlacedCell, mark: DecimalMark): NumberCell 
   if (text === "") return { kind: "empty" };
   const value = readNumber(text, mark);
   if (value !== undefined) return { kind: "number", value };
-  const censored = CENSORED.exec(text);
-  if (censored) {
-    const limit = censored[1] === undefined ? undefined : readNumber(censored[1], mark);
-    return { kind: "censored", text, ...(limit === undefined ? {} : { limit }) };
+  if (CENSORED.test(text)) return { kind: "censored", text };
+  const below = BELOW.exec(text)?.[1];
+  if (below !== undefined) {
+    const limit = readNumber(below, mark);
+    if (limit !== undefined) return { kind: "censored", text, limit };
+    if (LIMIT_WORD.test(below)) return { kind: "censored", text };
   }
   throw new RunFileError([{ ...place, message: numberAdvice(text, mark) }]);
 }
 
-function readNumber(text: string, mark: DecimalMark): number | undefined {
+/** A number written with this decimal mark, or `undefined`. */
+export function readNumber(text: string, mark: DecimalMark): number | undefined {
   if (!(mark === "," ? COMMA : POINT).test(text)) return undefined;
   return Number(text.replace(",", ".").replaceAll("−", "-"));
 }
@@ -88,10 +92,14 @@ function numberAdvice(text: string, mark: DecimalMark): string {
   if (GROUPED.test(text)) {
     return `marks of thousands cannot be told from decimal marks; write the number without them`;
   }
-  if (/^\d{1,2}:\d{2}(:\d{2})?$/.test(text)) {
-    return `a clock time is no number; write the time since the start, as in "time [min]"`;
+  if (/(^|\s)\d{1,2}:\d{2}(:\d{2}([.,]\d+)?)?(\s*[ap]m)?$/i.test(text)) {
+    return `a clock time is no number, and past midnight it starts again; write the time since the ` +
+      `start, as in "time [min]"`;
   }
-  if (/^[+\-−]?\d+ \d{3}/.test(text)) return `write the number without spaces`;
+  if (/^[+\-−]?\d+\s\d{3}/.test(text)) return `write the number without spaces`;
+  if (/^[>≥]/.test(text)) {
+    return `a reading above a limit has no value; leave the cell empty and note it elsewhere`;
+  }
   return `expected a number with the decimal mark "${mark}"; write one, leave the cell empty where ` +
     `there is no reading, or write <LOQ where it was below the limit`;
 }

@@ -1,33 +1,23 @@
 import type { Caution } from "../quantity/caution.ts";
 import * as option from "../quantity/options.ts";
-import type { Quantity } from "../quantity/read_quantity.ts";
 import type { Source } from "../quantity/result.ts";
 import { commensurable, parseUnit } from "../quantity/unit.ts";
 import { readColumns, type ReadTable } from "./column_reader.ts";
 import { type DataFrame, isDataFrame, tableOfDataFrame } from "./data_frame.ts";
+import { type RunFacts, withFacts } from "./run_facts.ts";
 import { makeRuns, readLongTable } from "./long_table.ts";
 import type { DecimalMark } from "./number_cell.ts";
 import type { Run, RunInput } from "./run.ts";
 import { RunFileError } from "./run_file_error.ts";
 import { RunSet } from "./run_set.ts";
 import { readSource, type TextSource } from "./source_text.ts";
+import { type RowObjects, tableOfRows } from "./row_objects.ts";
 import { readTable, type Separator, type Table } from "./table.ts";
 import { readWideTable } from "./wide_table.ts";
-
-/** Rows as objects, keys being headers with their units. */
-export type RowObjects = readonly Readonly<Record<string, string | number | null | undefined>>[];
 
 /** What {@link readRuns} reads: a path, a file: URL, a file, text with a name, rows, a data frame; or
  * several of the first four. */
 export type RunSource = TextSource | RowObjects | DataFrame | readonly TextSource[];
-
-/** Facts of a run that a file may lack. */
-export interface RunFacts {
-  /** Temperature, K, or text with its unit. */
-  temperature?: Quantity;
-  /** Initial concentrations by species, mol/L, or text with their units. */
-  initialConcentrations?: Record<string, Quantity>;
-}
 
 /** How {@link readRuns} reads. */
 export interface ReadRunsOptions extends RunFacts {
@@ -45,8 +35,8 @@ export interface ReadRunsOptions extends RunFacts {
 }
 
 const facts = {
-  temperature: (value: unknown): Quantity => value as Quantity,
-  initialConcentrations: option.record((value): Quantity => value as Quantity),
+  temperature: option.quantity("K", { above: 0 }),
+  initial: option.record(option.quantity("mol/L", { atLeast: 0 })),
 };
 
 const READERS = {
@@ -86,12 +76,18 @@ export async function readRuns(source: RunSource, options: ReadRunsOptions = {})
   const sources: Source[] = [];
   const notes: Caution[] = [];
   const runs: Run[] = [];
-  for (const { table, from } of await tablesOf(source, read.separator)) {
+  for (const { table, from } of await tablesOf(source, read)) {
     if (from) sources.push(from);
     const columns = readColumns(table);
     const { inputs, note } = readInputs(columns, read);
     if (note) notes.push(note);
-    runs.push(...makeRuns(inputs.map((input) => withFacts(input, read)), table));
+    for (const run of makeRuns(inputs, table)) {
+      const other = runs.find(({ id }) => id === run.id);
+      if (other) throw sameId(run.id, table.file, sources);
+      const facts = withFacts(run, read);
+      runs.push(facts.run);
+      notes.push(...facts.notes);
+    }
   }
   const unknown = Object.keys(read.runs ?? {}).find((id) => !runs.some((run) => run.id === id));
   if (unknown !== undefined) {
@@ -104,11 +100,11 @@ export async function readRuns(source: RunSource, options: ReadRunsOptions = {})
 
 async function tablesOf(
   source: RunSource,
-  separator: Separator | undefined,
+  { separator, decimal }: ReadRunsOptions,
 ): Promise<{ table: Table; from?: Source }[]> {
-  if (isDataFrame(source)) return [{ table: tableOfDataFrame(source) }];
+  if (isDataFrame(source)) return [{ table: tableOfDataFrame(source, decimal) }];
   if (Array.isArray(source) && source.length > 0 && source.every(isRow)) {
-    return [{ table: tableOfRows(source as RowObjects) }];
+    return [{ table: tableOfRows(source as RowObjects, "rows", decimal) }];
   }
   const list = (Array.isArray(source) ? source : [source]) as readonly TextSource[];
   if (list.length === 0) throw new RangeError(`Cannot read runs from no file: name at least one`);
@@ -138,20 +134,6 @@ function isRow(value: unknown): boolean {
     !Array.isArray(value);
 }
 
-/** A table of row objects; a cell that is not there is empty. */
-function tableOfRows(rows: RowObjects): Table {
-  const headers = [...new Set(rows.flatMap((row) => Object.keys(row)))];
-  return {
-    file: "rows",
-    headers,
-    headerLine: 0,
-    rows: rows.map((row, i) => ({
-      line: i + 1,
-      cells: headers.map((header) => String(row[header] ?? "").trim()),
-    })),
-  };
-}
-
 interface Layout {
   readonly inputs: readonly RunInput[];
   readonly note?: Caution;
@@ -165,7 +147,8 @@ function readInputs(
   const single = table.file.replace(/\.[^.]*$/, "");
   const roles = columns.columns.map((column) => column.role);
   const long = () => ({ inputs: readLongTable(columns, single, read.decimal) });
-  const wide = () => ({ inputs: readWideTable(columns, read.species, read.decimal) });
+  const species = read.species ?? onlyKey(read.initial);
+  const wide = () => ({ inputs: readWideTable(columns, species, read.decimal) });
   if (read.layout === "wide") return wide();
   if (read.layout === "long" && !roles.includes("run")) {
     throw new RunFileError([{
@@ -181,8 +164,8 @@ function readInputs(
   }
   const signals = columns.columns.filter((column) => column.role === "signal");
   if (signals.length < 2) return long();
-  // Facts of a run in columns of their own, or uncertainties, only make sense for one run.
-  if (roles.some((role) => ["temperature", "initial", "uncertainty"].includes(role))) return long();
+  // Facts of a run in columns of their own only make sense for one run.
+  if (roles.some((role) => ["temperature", "initial", "exclusion"].includes(role))) return long();
   const [first, ...rest] = signals.map((column) => column.role === "signal" ? column.unit : "1");
   const alike = rest.every((unit) => commensurable(parseUnit(unit), parseUnit(first)));
   if (!alike) {
@@ -209,15 +192,15 @@ function readInputs(
   };
 }
 
-function withFacts(input: RunInput, read: option.ReadOptions<typeof READERS>): RunInput {
-  const own = read.runs?.[input.id] ?? {};
-  return {
-    ...input,
-    temperature: own.temperature ?? read.temperature ?? input.temperature,
-    initialConcentrations: {
-      ...input.initialConcentrations,
-      ...read.initialConcentrations,
-      ...own.initialConcentrations,
-    },
-  };
+function onlyKey(facts: Readonly<Record<string, unknown>> = {}): string | undefined {
+  const keys = Object.keys(facts);
+  return keys.length === 1 ? keys[0] : undefined;
+}
+
+function sameId(id: string, file: string, sources: readonly Source[]): RunFileError {
+  const files = sources.map((source) => source.name).join(", ");
+  return new RunFileError([{
+    file,
+    message: `a run "${id}" is there already (files ${files}); give every run a name of its own`,
+  }]);
 }

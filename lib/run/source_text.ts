@@ -25,8 +25,20 @@ export async function readSource(given: TextSource): Promise<SourceText> {
 async function readBytes(
   given: TextSource,
 ): Promise<{ name: string; bytes: Uint8Array<ArrayBuffer> }> {
-  if (typeof given === "string" || given instanceof URL) {
-    const name = decodeURIComponent(String(given).split(/[/\\]/).at(-1) ?? String(given));
+  if (typeof given === "string") {
+    if (/[\r\n]/.test(given)) {
+      throw new TypeError(
+        `Cannot read a path of several lines, "${given.slice(0, 40)}…": write text as ` +
+          `{ name: "runs.csv", text }`,
+      );
+    }
+    return { name: given.split(/[/\\]/).at(-1)!, bytes: await Deno.readFile(given) };
+  }
+  if (given instanceof URL) {
+    if (given.protocol !== "file:") {
+      throw new TypeError(`Cannot read runs from ${given}: only files are read; save it first`);
+    }
+    const name = decodeURIComponent(given.pathname.split("/").at(-1)!);
     return { name, bytes: await Deno.readFile(given) };
   }
   if (given instanceof Blob) {
@@ -42,12 +54,18 @@ function decode(bytes: Uint8Array, file: string): string {
     : bytes[0] === 0xfe && bytes[1] === 0xff
     ? "utf-16be"
     : undefined;
+  let text: string;
   try {
-    return new TextDecoder(utf16 ?? "utf-8", { fatal: true }).decode(bytes);
+    text = new TextDecoder(utf16 ?? "utf-8", { fatal: true }).decode(bytes);
   } catch {
-    throw new RunFileError([{
-      file,
-      message: "the file is not UTF-8 text; save it as CSV UTF-8",
-    }]);
+    throw notUtf8(file, "the file is not UTF-8 text");
   }
+  if (text.includes("\0")) {
+    throw notUtf8(file, "the file holds zero bytes, so it is UTF-16 without its mark, or no text");
+  }
+  return text;
+}
+
+function notUtf8(file: string, why: string): RunFileError {
+  return new RunFileError([{ file, message: `${why}; save it as CSV UTF-8` }]);
 }

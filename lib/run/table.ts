@@ -1,4 +1,4 @@
-import { type FilePlace, RunFileError } from "./run_file_error.ts";
+import { type FilePlace, RunFileError, type RunFileFault } from "./run_file_error.ts";
 
 /** A table of text cells as it stands in a file, blank rows left out, places kept. */
 export interface Table {
@@ -52,19 +52,16 @@ export async function readTable(text: string, file: string, separator?: Separato
       message: `the quotation marks do not pair up (${(error as Error).message})`,
     }]);
   }
-  const filled = records.map(({ record, info }) => ({ line: info.lines, cells: record }))
+  const filled = records
+    .map(({ record, info }) => ({ line: info.lines, cells: record.map((cell) => cell.trim()) }))
     .filter((row) => row.cells.some((cell) => cell !== ""));
   const [head, ...rows] = filled;
   if (!head) throw new RunFileError([{ file, message: "the file is empty" }]);
   const headers = withoutEmptyTail(head.cells);
-  const faults = rows.filter((row) => withoutEmptyTail(row.cells).length > headers.length)
-    .map((row) => ({
-      file,
-      line: row.line,
-      message: `the row has ${withoutEmptyTail(row.cells).length} cells and the header ` +
-        `${headers.length}; quote cells that hold the separator "${delimiter}", or say which ` +
-        `separator it is with the option "separator"`,
-    }));
+  if (rows.length === 0) {
+    throw new RunFileError([{ file, message: "there are no readings under the header" }]);
+  }
+  const faults = rows.flatMap((row) => unequalCells(file, row, headers.length, delimiter) ?? []);
   if (faults.length > 0) throw new RunFileError(faults);
   return {
     file,
@@ -74,6 +71,31 @@ export async function readTable(text: string, file: string, separator?: Separato
       line,
       cells: headers.map((_, i) => cells[i] ?? ""),
     })),
+  };
+}
+
+/** The fault of a row that has not as many cells as the header; empty cells at its end do not count as too
+ * many. */
+function unequalCells(
+  file: string,
+  row: TableRow,
+  expected: number,
+  delimiter: Separator,
+): RunFileFault | undefined {
+  const least = withoutEmptyTail(row.cells).length;
+  if (least <= expected && row.cells.length >= expected) return undefined;
+  const mark = delimiter === "\t" ? "a tab" : `"${delimiter}"`;
+  const advice = least > expected
+    ? `quote cells that hold the separator ${mark}` +
+      (delimiter === "," ? `, write decimal commas only in a file separated by ";"` : "") +
+      `, or say which separator it is with the option "separator"`
+    : `write ${mark} for every empty cell too, so that none can shift`;
+  return {
+    file,
+    line: row.line,
+    cell: row.cells.join(delimiter),
+    message: `the row has ${Math.max(least, Math.min(row.cells.length, expected))} cells and the ` +
+      `header ${expected}; ${advice}`,
   };
 }
 
