@@ -58,7 +58,9 @@ export type {
   SignalQuantity,
 } from "./lib/run/signal.ts";
 export { readRuns } from "./lib/run/read_runs.ts";
-export type { ReadRunsOptions, RowObjects, RunFacts, RunSource } from "./lib/run/read_runs.ts";
+export type { ReadRunsOptions, RunSource } from "./lib/run/read_runs.ts";
+export type { RowObjects } from "./lib/run/row_objects.ts";
+export type { RunFacts } from "./lib/run/run_facts.ts";
 export { RunFileError } from "./lib/run/run_file_error.ts";
 export type { FilePlace, RunFileFault } from "./lib/run/run_file_error.ts";
 export type { TextSource } from "./lib/run/source_text.ts";
@@ -113,4 +115,4 @@ export type {
   Output,
 } from "./lib/report/notebook.ts";
 export { renderReport } from "./lib/report/render_report.ts";
-export type { RenderReportOptions } from "./lib/report/render_report.ts";
+export type { RenderReportOptions } from "./lib/report/report_page.ts";

@@ -1,4 +1,5 @@
-/** A drawn figure: a standalone SVG picture with words for those who cannot see it.
+/** A figure: a standalone SVG picture with words for those who cannot see it. The plotting library is loaded
+ * and the picture drawn when it is first asked for.
  *
  * @example
  * ```ts
@@ -11,24 +12,25 @@
  *   signals: [{ name: "A", unit: "mol/L", values: [0.1, 0.0741, 0.0549, 0.0301] }],
  * });
  * const figure = plotLinearizations([linearize(run, { order: 1 })]);
- * ok(figure.svg().startsWith("<svg") && figure.alt.includes("order 1"));
+ * ok((await figure.svg()).startsWith("<svg") && figure.alt.includes("order 1"));
  * ``` */
 export class Figure {
   /** What is seen, in a sentence or two. */
   readonly alt: string;
-  readonly #svg: string;
+  readonly #draw: () => Promise<string>;
+  #svg?: Promise<string>;
 
-  /** A figure from its markup.
+  /** A figure that can be drawn.
    *
-   * @param svg standalone SVG markup @param alt what is seen */
-  constructor(svg: string, alt: string) {
-    this.#svg = svg;
+   * @param draw gives standalone SVG markup @param alt what is seen */
+  constructor(draw: () => Promise<string>, alt: string) {
+    this.#draw = draw;
     this.alt = alt;
   }
 
   /** The picture as a standalone SVG document. */
-  svg(): string {
-    return this.#svg;
+  svg(): Promise<string> {
+    return this.#svg ??= this.#draw();
   }
 
   /** What is seen. */
@@ -42,7 +44,7 @@ export class Figure {
   }
 
   /** What a notebook shows. */
-  [Symbol.for("Jupyter.display")](): Record<string, string> {
-    return { "image/svg+xml": this.#svg, "text/plain": this.toString() };
+  async [Symbol.for("Jupyter.display")](): Promise<Record<string, string>> {
+    return { "image/svg+xml": await this.svg(), "text/plain": this.toString() };
   }
 }

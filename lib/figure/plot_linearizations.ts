@@ -1,14 +1,10 @@
-import * as Plot from "@observablehq/plot";
 import { formatNumber } from "../quantity/number_format.ts";
 import type { Linearization } from "../rate_law/linearize.ts";
-import { axisUnit } from "./axis.ts";
-import { composeSvg, drawPanel } from "./draw.ts";
 import { Figure } from "./figure.ts";
-import { frameMarks } from "./frame.ts";
-import { COLOURS, INK } from "./style.ts";
 
-const PANEL_WIDTH = 300;
-const PANEL_HEIGHT = 270;
+/** The drawing, with the plotting library; no literal in the import, so that neither is looked at before a
+ * picture is asked for. */
+const DRAWING: string = "./draw_linearizations.ts";
 
 /** Draws linearizations side by side, each with its line; the area of a point is its weight in the line.
  *
@@ -20,49 +16,12 @@ export function plotLinearizations(lines: readonly Linearization[]): Figure {
       `Cannot draw no linearizations: give at least one, as linearize(run) makes`,
     );
   }
-  const panels = lines.map(drawLine);
   const alt = `Linearized plots of run ${lines[0].run}, side by side: ` +
     lines.map((line) =>
       `order ${line.order} (${line.axis} against time, r² ${formatNumber(line.rSquared, 5)})`
     ).join("; ") + `. Points with little weight are small.`;
-  const placed = panels.map((panel, i) => ({ panel, x: i * PANEL_WIDTH, y: 0 }));
-  return new Figure(composeSvg(placed, alt), alt);
-}
-
-function drawLine(line: Linearization): ReturnType<typeof drawPanel> {
-  const last = line.times[line.times.length - 1];
-  const time = axisUnit("s", last);
-  const points = Array.from(line.times, (t, i) => ({
-    x: time.from(t),
-    y: line.transformed[i],
-    // Area in proportion to weight, with a least size at which a point can still be seen.
-    r: 1 + 3 * Math.sqrt(line.weights[i]),
-  }));
-  const ends = [0, last].map((t) => ({ x: time.from(t), y: line.at(t) }));
-  return drawPanel({
-    width: PANEL_WIDTH,
-    height: PANEL_HEIGHT,
-    marginLeft: 70,
-    marginBottom: 46,
-    marginTop: 30,
-    marginRight: 10,
-    x: { insetLeft: 8, insetRight: 8 },
-    y: { nice: true, insetTop: 4, insetBottom: 4 },
-    r: { type: "identity" },
-    marks: [
-      ...frameMarks({
-        x: { title: "time", unit: time.unit },
-        y: { title: line.axis },
-        yLabelOffset: 56,
-      }),
-      Plot.line(ends, { x: "x", y: "y", stroke: COLOURS[1], strokeWidth: 1.5 }),
-      Plot.dot(points, { x: "x", y: "y", r: "r", stroke: COLOURS[0], fill: "white" }),
-      Plot.text([`order ${line.order}`], {
-        frameAnchor: "top",
-        dy: -20,
-        fontWeight: "bold",
-        fill: INK,
-      }),
-    ],
-  });
+  return new Figure(async () => {
+    const { drawLinearizations }: typeof import("./draw_linearizations.ts") = await import(DRAWING);
+    return drawLinearizations(lines, alt);
+  }, alt);
 }

@@ -1,14 +1,14 @@
-import * as Plot from "@observablehq/plot";
 import { formatNumber } from "../quantity/number_format.ts";
 import * as option from "../quantity/options.ts";
 import { RateLawFit } from "../rate_law/rate_law_fit.ts";
 import { listRuns, type Runs } from "../rate_law/fit_rate_law.ts";
 import { axisUnit } from "./axis.ts";
-import { composeSvg, drawPanel, type PlacedPanel } from "./draw.ts";
+import type { Series } from "./draw_runs.ts";
 import { Figure } from "./figure.ts";
-import { frameMarks } from "./frame.ts";
-import { drawLegend, type LegendEntry } from "./legend.ts";
-import { COLOURS, cycle, DASHES, SYMBOLS } from "./style.ts";
+
+/** The drawing, with the plotting library; no literal in the import, so that neither is looked at before a
+ * picture is asked for. */
+const DRAWING: string = "./draw_runs.ts";
 
 /** How {@link plotRuns} draws. */
 export interface PlotRunsOptions {
@@ -17,12 +17,6 @@ export interface PlotRunsOptions {
   /** Width of the figure, px.
    * @default {640} */
   width?: number;
-}
-
-interface Series {
-  readonly name: string;
-  readonly points: readonly { x: number; y: number }[];
-  readonly curve?: (x: number) => number;
 }
 
 /** Draws runs against time: readings as points, and the fitted law as a line through them where a
@@ -46,74 +40,15 @@ export function plotRuns(
   const time = axisUnit("s", Math.max(...times));
   const value = axisUnit(unit, Math.max(...values.map(Math.abs)));
   const isConcentration = unit === "mol/L";
-  const styled = raw.map((series, i) => ({
-    ...series,
-    colour: cycle(COLOURS, i),
-    symbol: cycle(SYMBOLS, i),
-    dash: cycle(DASHES, i),
-    points: series.points.map((p) => ({ x: time.from(p.x), y: value.from(p.y) })),
-  }));
-  const [first, last] = [Math.min(0, ...times), Math.max(...times)];
-  const grid = Array.from({ length: 161 }, (_, i) => first + (last - first) * i / 160);
-  const panel = drawPanel({
-    width,
-    height: Math.round(width * 0.58),
-    marginLeft: 66,
-    marginBottom: 46,
-    marginTop: 8,
-    marginRight: 14,
-    x: { nice: false, insetRight: 8, insetLeft: 8 },
-    y: { nice: true, zero: Math.min(...values) >= 0, insetTop: 8 },
-    symbol: { type: "identity" },
-    marks: [
-      ...frameMarks({
-        x: { title: "time", unit: time.unit },
-        y: { title: isConcentration ? `[${name}]` : name, unit: value.unit },
-      }),
-      ...styled.filter((series) => series.curve).map((series) =>
-        Plot.line(grid.map((t) => ({ x: time.from(t), y: value.from(series.curve!(t)) })), {
-          x: "x",
-          y: "y",
-          stroke: series.colour,
-          strokeWidth: 1.5,
-          strokeDasharray: series.dash,
-        })
-      ),
-      ...styled.map((series) =>
-        Plot.dot(series.points as { x: number; y: number }[], {
-          x: "x",
-          y: "y",
-          stroke: series.colour,
-          fill: "white",
-          r: 3,
-          symbol: series.symbol as Plot.SymbolType,
-        })
-      ),
-    ],
-  });
-  const legend = raw.length > 1
-    ? drawLegend(legendEntries(styled, Boolean(fits)), width)
-    : undefined;
-  const placed: PlacedPanel[] = legend
-    ? [{ panel: legend, x: 0, y: 4 }, { panel, x: 0, y: legend.height + 4 }]
-    : [{ panel, x: 0, y: 0 }];
   const alt =
     `${name} against time in ${time.unit} for ${raw.length} run${raw.length > 1 ? "s" : ""}` +
     ` (${raw.map((series) => series.name).join("; ")})` +
     (fits ? `, readings as points and the fitted rate law as a line` : `, readings as points`);
-  return new Figure(composeSvg(placed, alt), alt);
-}
-
-function legendEntries(
-  styled: readonly { name: string; colour: string; symbol: string; dash: string }[],
-  lines: boolean,
-): LegendEntry[] {
-  return styled.map((series) => ({
-    label: series.name,
-    colour: series.colour,
-    symbol: series.symbol,
-    dash: lines ? series.dash : undefined,
-  }));
+  return new Figure(async () => {
+    const { drawRuns }: typeof import("./draw_runs.ts") = await import(DRAWING);
+    const title = isConcentration ? `[${name}]` : name;
+    return drawRuns({ series: raw, title, time, value, width, alt });
+  }, alt);
 }
 
 function asFits(runs: unknown): RateLawFit[] | undefined {

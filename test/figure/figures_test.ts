@@ -3,11 +3,15 @@ import { describe, expect, test } from "vitest";
 import { FIGURES } from "./figures.ts";
 import { expectFigure } from "./snapshot.ts";
 
-describe.each(Object.entries(FIGURES))("figure %s", (name, draw) => {
-  const figure = draw();
-  const svg = figure.svg();
+const drawn = await Promise.all(
+  Object.entries(FIGURES).map(async ([name, draw]) => {
+    const figure = draw();
+    return [name, { draw, figure, svg: await figure.svg() }] as const;
+  }),
+);
 
-  test("is the picture in snapshots/", () => expectFigure(name, figure));
+describe.each(drawn)("figure %s", (name, { draw, figure, svg }) => {
+  test("is the picture in snapshots/", () => expectFigure(name, svg));
 
   test("is a standalone SVG with words and a font that exists everywhere", () => {
     expect(svg).toMatch(/^<svg xmlns="http:\/\/www\.w3\.org\/2000\/svg"/);
@@ -24,11 +28,11 @@ describe.each(Object.entries(FIGURES))("figure %s", (name, draw) => {
     expect(new Set(ids).size).toBe(ids.length);
   });
 
-  test("draws the same picture twice", () => expect(draw().svg()).toBe(svg));
+  test("draws the same picture twice", async () => expect(await draw().svg()).toBe(svg));
 
-  test("shows itself in a notebook", () => {
+  test("shows itself in a notebook", async () => {
     // deno-lint-ignore no-explicit-any
-    const bundle = (figure as any)[Symbol.for("Jupyter.display")]();
+    const bundle = await (figure as any)[Symbol.for("Jupyter.display")]();
     expect(bundle).toEqual({ "image/svg+xml": svg, "text/plain": `Figure: ${figure.alt}` });
   });
 });
