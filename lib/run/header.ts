@@ -24,7 +24,7 @@ export interface Header {
 export function splitHeader(text: string): Header {
   const bracket = /^(.*?)\s*\[([^\]]*)\]$/.exec(text);
   if (bracket && bracket[1] !== "") return { name: bracket[1], unit: bracket[2].trim() };
-  const round = /^(.*?\S)\s*\(([^()]*(?:\([^()]*\)[^()]*)*)\)$/.exec(text);
+  const round = /^(.*?[^\s/])\s*\(([^()]*(?:\([^()]*\)[^()]*)*)\)$/.exec(text);
   if (round && !/^u$/i.test(round[1]) && isUnit(round[2])) {
     return { name: round[1], unit: round[2] };
   }

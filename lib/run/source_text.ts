@@ -28,7 +28,9 @@ async function readBytes(
   if (typeof given === "string") {
     if (/[\r\n]/.test(given)) {
       throw new TypeError(
-        `Cannot read a path of several lines, "${given.slice(0, 40)}…": write text as ` +
+        `Cannot read a path of several lines, ${
+          JSON.stringify(given.slice(0, 40))
+        }…: write text as ` +
           `{ name: "runs.csv", text }`,
       );
     }

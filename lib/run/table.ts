@@ -23,6 +23,9 @@ export interface TableRow {
 /** Separators of cells. */
 export type Separator = "," | ";" | "\t";
 
+/** The parser; no literal in the import, so that it is not looked at before a file is read. */
+const PARSER: string = "csv-parse/sync";
+
 const SEPARATORS: readonly Separator[] = ["\t", ";", ","];
 
 /** Reads delimited text into a table. The separator is that which the header line has outside quotes and
@@ -32,7 +35,7 @@ const SEPARATORS: readonly Separator[] = ["\t", ";", ","];
  * @param file its name @param separator the separator, if it was given
  * @throws {RunFileError} if the file is empty or a row has more or fewer cells than the header */
 export async function readTable(text: string, file: string, separator?: Separator): Promise<Table> {
-  const { parse } = await import("csv-parse/sync");
+  const { parse }: typeof import("csv-parse/sync") = await import(PARSER);
   const delimiter = separator ?? detectSeparator(text);
   let records: { record: string[]; info: { lines: number } }[];
   try {
