@@ -159,13 +159,38 @@ export class NumberReader {
    *
    * @throws {RunFileError} if there are any */
   finish(): void {
-    if (this.#faults.length > 0) throw new RunFileError(this.#faults);
+    if (this.#faults.length === 0) return;
+    const order = (fault: RunFileFault) => (fault.line ?? 0) * 1e6 + (fault.column ?? 0);
+    throw new RunFileError(this.#faults.toSorted((a, b) => order(a) - order(b)));
   }
 }
 
 /** Indices of the columns whose cells must be numbers. */
 export function numberColumns(columns: readonly Column[]): number[] {
   return columns.flatMap((column, i) => NUMBER_ROLES.has(column.role) ? [i] : []);
+}
+
+/** The column of time.
+ *
+ * @throws {RunFileError} if there is none, or several */
+export function timeColumnOf(read: ReadTable): number {
+  const only = onlyColumn(read, "time");
+  if (only !== undefined) return only;
+  const { table, columns } = read;
+  const likely = columns.findIndex((column) =>
+    column.role === "signal" && commensurable(parseUnit(column.unit), parseUnit("s"))
+  );
+  const unit = likely < 0 ? "min" : (columns[likely] as { unit: string }).unit;
+  throw new RunFileError([{
+    file: table.file,
+    line: table.headerLine,
+    message: `there is no time column among ${
+      table.headers.map((h) => `"${h}"`).join(", ")
+    }; call ` +
+      (likely < 0
+        ? `it "time [min]" or another unit of time`
+        : `"${table.headers[likely]}" "time [${unit}]" if it is one`),
+  }]);
 }
 
 /** The only column of a role, or `undefined`.

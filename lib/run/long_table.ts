@@ -3,6 +3,7 @@ import {
   NumberReader,
   onlyColumn,
   type ReadTable,
+  timeColumnOf,
   uncertaintyColumn,
 } from "./column_reader.ts";
 import type { Column } from "./header.ts";
@@ -28,8 +29,7 @@ export function readLongTable(
   decimal: DecimalMark | undefined,
 ): RunInput[] {
   const { table, columns } = read;
-  const timeColumn = onlyColumn(read, "time");
-  if (timeColumn === undefined) throw missingTime(table);
+  const timeColumn = timeColumnOf(read);
   const runColumn = onlyColumn(read, "run");
   const speciesColumn = onlyColumn(read, "species");
   const exclusionColumn = onlyColumn(read, "exclusion");
@@ -57,16 +57,6 @@ export function readLongTable(
   });
   numbers.finish();
   return runs;
-}
-
-/** The error of a table without time. */
-export function missingTime(table: Table): RunFileError {
-  return new RunFileError([{
-    file: table.file,
-    line: table.headerLine,
-    message: `there is no time column among ${table.headers.map((h) => `"${h}"`).join(", ")}; ` +
-      `call it "time [min]" or another unit of time`,
-  }]);
 }
 
 type Facts = Pick<RunInput, "id" | "temperature" | "initialConcentrations" | "properties">;

@@ -2,7 +2,7 @@ import type { Caution } from "../quantity/caution.ts";
 import * as option from "../quantity/options.ts";
 import type { Source } from "../quantity/result.ts";
 import { commensurable, parseUnit } from "../quantity/unit.ts";
-import { readColumns, type ReadTable } from "./column_reader.ts";
+import { readColumns, type ReadTable, timeColumnOf } from "./column_reader.ts";
 import { type DataFrame, isDataFrame, tableOfDataFrame } from "./data_frame.ts";
 import { type RunFacts, withFacts } from "./run_facts.ts";
 import { makeRuns, readLongTable } from "./long_table.ts";
@@ -144,6 +144,7 @@ function readInputs(
   read: option.ReadOptions<typeof READERS>,
 ): Layout {
   const { table } = columns;
+  timeColumnOf(columns);
   const single = table.file.replace(/\.[^.]*$/, "");
   const roles = columns.columns.map((column) => column.role);
   const long = () => ({ inputs: readLongTable(columns, single, read.decimal) });

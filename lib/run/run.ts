@@ -1,11 +1,15 @@
 import type { Caution } from "../quantity/caution.ts";
-import { formatFixed, formatNumber } from "../quantity/number_format.ts";
+import { formatNumber } from "../quantity/number_format.ts";
 import { type Quantity, readQuantity } from "../quantity/read_quantity.ts";
 import { Result } from "../quantity/result.ts";
-import type { Section } from "../quantity/section.ts";
+import { cellJson, type Section } from "../quantity/section.ts";
 import { convert, parseUnit } from "../quantity/unit.ts";
+import { readingsTable, runSections } from "./run_sections.ts";
 import { sharedCaution } from "./shared_uncertainty.ts";
+import { type Exclusion, readExclusions } from "./exclusion.ts";
 import { readSignal, sameLength, type Signal, type SignalInput } from "./signal.ts";
+
+export type { Exclusion } from "./exclusion.ts";
 
 /** Times as a user writes them: numbers in s, or numbers with their unit. */
 export type TimesInput =
@@ -31,14 +35,6 @@ export interface RunInput {
   exclusions?: readonly Exclusion[];
   /** What a reader must know about how the run came about. */
   notes?: readonly Caution[];
-}
-
-/** A reading that is left out of fits. */
-export interface Exclusion {
-  /** Which reading. */
-  readonly index: number;
-  /** Why. */
-  readonly reason: string;
 }
 
 /** One run: a reaction followed in time under known conditions.
@@ -182,39 +178,18 @@ export class Run extends Result {
 
   /** The content, in reading order. */
   override sections(): Section[] {
-    const facts = [
-      ...(this.temperature === undefined ? [] : [{
-        key: "temperature",
-        label: "temperature",
-        value: { value: this.temperature, text: formatFixed(this.temperature, 2) + " K" },
-      }]),
-      ...Object.entries(this.initialConcentrations).map(([species, value]) => ({
-        key: `initial ${species}`,
-        label: `initial ${species}`,
-        value,
-        unit: "mol/L",
-      })),
-      ...Object.entries(this.properties).map(([key, value]) => ({ key, label: key, value })),
-    ];
-    return [{ kind: "values", rows: facts }, {
-      kind: "table",
-      key: "readings",
-      columns: [
-        { key: "time", label: "time / s" },
-        ...this.signals.map((signal) => ({
-          key: signal.name,
-          label: signal.unit === "1" ? signal.name : `${signal.name} / ${signal.unit}`,
-        })),
-      ],
-      rows: Array.from(this.times, (time, i) => [
-        time,
-        ...this.signals.map((signal) =>
-          Number.isNaN(signal.values[i])
-            ? signal.censored.find((c) => c.index === i)?.text ?? null
-            : signal.values[i]
-        ),
-      ]),
-    }];
+    return runSections(this);
+  }
+
+  /** The run as plain data, every reading included. */
+  override toJSON(): Record<string, unknown> {
+    const readings = readingsTable(this, Array.from(this.times, (_, i) => i));
+    return {
+      ...super.toJSON(),
+      readings: readings.rows.map((row) =>
+        Object.fromEntries(readings.columns.map((column, i) => [column.key, cellJson(row[i])]))
+      ),
+    };
   }
 }
 
@@ -262,22 +237,4 @@ function readTimes(given: TimesInput, where: string): Float64Array {
     }
   });
   return times;
-}
-
-function readExclusions(
-  given: readonly Exclusion[],
-  count: number,
-  where: string,
-): readonly Exclusion[] {
-  for (const { index, reason } of given) {
-    if (!Number.isInteger(index) || index < 0 || index >= count) {
-      throw new RangeError(
-        `Cannot leave out reading ${index} of ${where}: its readings are 0 to ${count - 1}`,
-      );
-    }
-    if (typeof reason !== "string" || reason.trim() === "") {
-      throw new RangeError(`Cannot leave out reading ${index} of ${where} without a reason`);
-    }
-  }
-  return given.toSorted((a, b) => a.index - b.index);
 }

@@ -29,11 +29,11 @@ export function sharedCaution(run: string, signal: Signal): Caution | undefined 
     severity: "note",
     subject: run,
     message:
-      `All values of "${signal.name}" in run "${run}" share an error from ${
+      `All values of "${signal.name}" in run "${run}" share an error (${
         causes.map((cause) => cause.from).join(", ")
-      }: ${
+      }), one standard uncertainty being ${
         formatNumber(percent, 2)
-      } % (one standard uncertainty) at the largest value. It does not ` +
-      `average out over readings and is not in their own uncertainties`,
+      } % of the largest value. It does ` +
+      `not average out over readings and is not in their own uncertainties`,
   };
 }

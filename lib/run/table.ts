@@ -20,6 +20,17 @@ export interface TableRow {
   readonly cells: readonly string[];
 }
 
+/** A record with the line it ends in. */
+interface CsvRecord {
+  readonly record: readonly string[];
+  readonly info: { readonly lines: number };
+}
+
+/** What is used of the CSV parser. */
+interface CsvParser {
+  parse(text: string, options: Readonly<Record<string, unknown>>): readonly CsvRecord[];
+}
+
 /** Separators of cells. */
 export type Separator = "," | ";" | "\t";
 
@@ -35,9 +46,9 @@ const SEPARATORS: readonly Separator[] = ["\t", ";", ","];
  * @param file its name @param separator the separator, if it was given
  * @throws {RunFileError} if the file is empty or a row has more or fewer cells than the header */
 export async function readTable(text: string, file: string, separator?: Separator): Promise<Table> {
-  const { parse }: typeof import("csv-parse/sync") = await import(PARSER);
+  const { parse }: CsvParser = await import(PARSER);
   const delimiter = separator ?? detectSeparator(text);
-  let records: { record: string[]; info: { lines: number } }[];
+  let records: readonly CsvRecord[];
   try {
     records = parse(text, {
       delimiter,
@@ -46,7 +57,7 @@ export async function readTable(text: string, file: string, separator?: Separato
       skip_empty_lines: false,
       trim: true,
       bom: true,
-    }) as unknown as typeof records;
+    });
   } catch (error) {
     const line = (error as { lines?: number }).lines;
     throw new RunFileError([{

@@ -1,7 +1,6 @@
 import { commensurable, parseUnit } from "../quantity/unit.ts";
-import { NumberReader, onlyColumn, type ReadTable, uncertaintyColumn } from "./column_reader.ts";
+import { NumberReader, type ReadTable, timeColumnOf, uncertaintyColumn } from "./column_reader.ts";
 import { readHeader } from "./header.ts";
-import { missingTime } from "./long_table.ts";
 import type { DecimalMark } from "./number_cell.ts";
 import { propertyReader } from "./property_value.ts";
 import type { RunInput } from "./run.ts";
@@ -21,8 +20,7 @@ export function readWideTable(
   decimal: DecimalMark | undefined,
 ): RunInput[] {
   const { columns } = read;
-  const timeColumn = onlyColumn(read, "time");
-  if (timeColumn === undefined) throw missingTime(read.table);
+  const timeColumn = timeColumnOf(read);
   const timeUnit = (columns[timeColumn] as { unit: string }).unit;
   const { table, facts } = splitFactRows(read.table, timeColumn);
   const runColumns = columns.flatMap((column, i) => column.role === "signal" ? [i] : []);

@@ -78,6 +78,12 @@ describe("what is ambiguous or wrong is told with file, line, column, cell and a
       /no time column among "minutes", "A \[mM\]"; call it "time \[min\]"/,
     ],
     [
+      "a time column of another name",
+      lines("Zeit [min],A [mM]", "0,4"),
+      { line: 1 },
+      /call "Zeit \[min\]" "time \[min\]" if it is one/,
+    ],
+    [
       "time without unit",
       lines("time,A [mM]", "0,4"),
       { line: 1, column: 1, cell: "time" },

@@ -137,8 +137,25 @@ describe("a run that contradicts itself is refused", () => {
 });
 
 test("a run shows its facts and readings, censored ones as they were written", () => {
-  expect(String(run)).toMatch(/Run 7, 4 readings/);
-  expect(String(run)).toMatch(/298\.15 K/);
-  expect(String(run)).toMatch(/<0\.5/);
-  expect(JSON.parse(JSON.stringify(run))).toMatchObject({ temperature: 298.15, pH: 7.4 });
+  const text = String(run.without([0], "spilt"));
+  expect(text).toMatch(/Run 7, 4 readings/);
+  expect(text).toMatch(/298\.15 K/);
+  expect(text).toMatch(/time \/ s +ester \/ \(mol\/L\) +u\(ester\) \/ \(mol\/L\) +left out/);
+  expect(text).toMatch(/^ +0 +0\.01000 +1\.0×10⁻⁴ +spilt$/m);
+  expect(text).toMatch(/^ +600 +<0\.5 +–$/m);
+  expect(JSON.parse(JSON.stringify(run))).toMatchObject({
+    temperature: 298.15,
+    pH: 7.4,
+    readings: [{ time: 0, ester: 0.01, "u(ester)": 1e-4 }, {}, {}, { time: 600, ester: "<0.5" }],
+  });
+});
+
+test("a long run shows its ends and says so; its data are complete", () => {
+  const values = Array.from({ length: 500 }, (_, i) => i);
+  const long = new Run({ id: "1", times: values, signals: [{ name: "A", unit: "1", values }] });
+  expect(String(long).split("\n").length).toBeLessThan(50);
+  expect(String(long)).toMatch(/460 readings between 19 s and 480 s are not shown/);
+  const { readings } = JSON.parse(JSON.stringify(long));
+  expect(readings).toHaveLength(500);
+  expect(readings[250]).toEqual({ time: 250, A: 250 });
 });
