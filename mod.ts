@@ -69,6 +69,14 @@ export type { DecimalMark } from "./lib/run/number_cell.ts";
 export { toDataFrame } from "./lib/run/data_frame.ts";
 export type { DataFrame } from "./lib/run/data_frame.ts";
 
+export { absorbanceToConcentration } from "./lib/run/absorbance_to_concentration.ts";
+export type { AbsorbanceOptions } from "./lib/run/absorbance_to_concentration.ts";
+export { applyCalibration } from "./lib/run/apply_calibration.ts";
+export type { CalibrationOptions } from "./lib/run/apply_calibration.ts";
+export { pressureToConcentration } from "./lib/run/pressure_to_concentration.ts";
+export type { PressureOptions } from "./lib/run/pressure_to_concentration.ts";
+export type { UncertainQuantity } from "./lib/run/estimate_option.ts";
+
 // Rate laws
 export { Linearization, linearize } from "./lib/rate_law/linearize.ts";
 export type { LinearizeOptions } from "./lib/rate_law/linearize.ts";
@@ -93,6 +101,13 @@ export type {
   RateConstantPoint,
 } from "./lib/temperature/arrhenius_fit.ts";
 export { PredictedRateConstant } from "./lib/temperature/predicted_rate_constant.ts";
+
+// Mechanisms
+export { mechanism, parseMechanism } from "./lib/mechanism/parse_mechanism.ts";
+export { Mechanism } from "./lib/mechanism/mechanism.ts";
+export { MechanismSyntaxError } from "./lib/mechanism/mechanism_syntax_error.ts";
+export type { NotationFault } from "./lib/mechanism/mechanism_syntax_error.ts";
+export type { ElementaryStep, Participant } from "./lib/mechanism/elementary_step.ts";
 
 // Figures
 export { Figure } from "./lib/figure/figure.ts";

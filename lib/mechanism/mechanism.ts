@@ -9,7 +9,9 @@ export class Mechanism {
   /** Every rate-constant symbol once, in the order first used, forward before reverse. */
   readonly rateConstants: readonly string[];
 
-  /** @param steps the steps, in order */
+  /** A mechanism of these steps.
+   *
+   * @param steps the steps, in order */
   constructor(steps: readonly ElementaryStep[]) {
     const species = new Set<string>();
     const symbols = new Set<string>();

@@ -17,7 +17,9 @@ export class MechanismSyntaxError extends SyntaxError {
   /** Column of the first fault, from 1. */
   readonly column: number;
 
-  /** @param faults at least one fault, in reading order */
+  /** The error of these faults.
+   *
+   * @param faults at least one fault, in reading order */
   constructor(faults: readonly NotationFault[]) {
     const list = faults.map((f) => `line ${f.line}, column ${f.column}: ${f.message}`);
     super(
