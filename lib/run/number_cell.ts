@@ -85,7 +85,8 @@ export function readNumberCell(cell: PlacedCell, mark: DecimalMark): NumberCell 
 /** A number written with this decimal mark, or `undefined`. */
 export function readNumber(text: string, mark: DecimalMark): number | undefined {
   if (!(mark === "," ? COMMA : POINT).test(text)) return undefined;
-  return Number(text.replace(",", ".").replaceAll("−", "-"));
+  const value = Number(text.replace(",", ".").replaceAll("−", "-"));
+  return Number.isFinite(value) ? value : undefined;
 }
 
 function numberAdvice(text: string, mark: DecimalMark): string {

@@ -100,6 +100,7 @@ describe("what is no number is refused with what to write", () => {
     ["0x10", /expected a number/],
     ["Infinity", /expected a number/],
     ["1e", /expected a number/],
+    ["1e400", /expected a number/],
   ])("%s", (text, message) => {
     expect(() => readNumberCell(at(text), ".")).toThrow(message);
   });

@@ -54,6 +54,7 @@ describe("p = p(0)[1 + (n − 1) x]: the reactant is gone at n p(0) and half gon
   ])("%j", (stoichiometry, pressures) => {
     const { values } = pressureToConcentration(make(pressures), { reactant: "A", stoichiometry })
       .signal("A");
+    expect(values[0] * 8.31446261815324 * 600).toBeCloseTo(40, 10); // kPa = J/L
     expect(values[1] / values[0]).toBeCloseTo(0.5, 12);
     expect(values[2] / values[0]).toBeCloseTo(0, 12);
   });

@@ -1,3 +1,4 @@
+import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { readRuns, type ReadRunsOptions } from "../../lib/run/read_runs.ts";
 import { RunFileError } from "../../lib/run/run_file_error.ts";
@@ -224,8 +225,65 @@ describe("encodings", () => {
 
   test.each([
     ["UTF-16 without its mark", utf16(true, false)],
+    ["UTF-16 without its mark, ASCII alone", utf16(true, false).filter((byte) => byte < 0x80)],
     ["Windows-1252", Uint8Array.from(text, (c) => c.charCodeAt(0))],
   ])("%s is refused with what to do", async (_, bytes) => {
     await expect(readRuns(new File([bytes], "f.csv"))).rejects.toThrow(/save it as CSV UTF-8/);
   });
+});
+
+test("any text is either read or told as a fault of the file, never as one of the program", async () => {
+  const cell = fc.constantFrom(
+    "time [min]",
+    "time",
+    "run",
+    "species",
+    "A [mM]",
+    "u(A) [mM]",
+    "B [AU]",
+    "pH",
+    "T [°C]",
+    "initial A [mM]",
+    "left out",
+    "0",
+    "1",
+    "1",
+    "2,5",
+    "1,234",
+    "3.5",
+    "-1",
+    "",
+    "",
+    "n.d.",
+    "<2",
+    "x",
+    '"',
+    "1e400",
+    "[]",
+    "A []",
+    "()",
+    "/",
+    "__proto__",
+    "constructor [1]",
+  );
+  const file = fc.tuple(
+    fc.array(fc.array(cell, { minLength: 1, maxLength: 5 }), { minLength: 1, maxLength: 6 }),
+    fc.constantFrom(",", ";", "\t"),
+  ).map(([rows, separator]) => rows.map((row) => row.join(separator)).join("\n"));
+  const options = fc.record({
+    layout: fc.constantFrom(undefined, "long", "wide", "single"),
+    decimal: fc.constantFrom(undefined, ".", ","),
+  });
+  await fc.assert(
+    fc.asyncProperty(fc.oneof(file, fc.string()), options, async (text, options) => {
+      try {
+        const runs = await readRuns({ name: "f.csv", text }, options as ReadRunsOptions);
+        expect(runs.length).toBeGreaterThan(0);
+        expect(String(runs)).toContain("f.csv");
+      } catch (error) {
+        if (!(error instanceof RunFileError)) throw error;
+      }
+    }),
+    { numRuns: 3000 },
+  );
 });

@@ -55,6 +55,18 @@ describe("a long table", () => {
     expect(runs.cautions).toEqual([]);
   });
 
+  test("is separated by what stands outside the brackets and quotes of its headers", async () => {
+    for (const header of ["area (mean; n = 3) [mM]", '"area; mean\t[mM]"']) {
+      const [run] = await read(lines(`time [s],${header}`, "0,4", "1,2"));
+      expect([...run.signal().values]).toEqual([0.004, 0.002]);
+    }
+    const [run] = await read(lines("time [s];A, mean [mM]", "0;4"));
+    expect(run.signal().name).toBe("A, mean");
+    await expect(read(lines("time [s],A [mM]", "0,4"), { separator: ";" })).rejects.toThrow(
+      /no time/,
+    );
+  });
+
   test("keeps equal times as replicates", async () => {
     const [run] = await read(lines("time [s],A [mM]", "0,4", "1,2", "1,2.1"));
     expect([...run.times]).toEqual([0, 1, 1]);
