@@ -2,6 +2,7 @@ import type { Result } from "../quantity/result.ts";
 import { compareRateLaws } from "../rate_law/compare_rate_laws.ts";
 import { fitRateLaw } from "../rate_law/fit_rate_law.ts";
 import { readRuns } from "../run/read_runs.ts";
+import type { RunSet } from "../run/run_set.ts";
 import { allowRead, type Command, orderOf, textOf, textsOf, UsageError } from "./command.ts";
 import { READING_OPTIONS, readingOptions } from "./reading_options.ts";
 
@@ -23,6 +24,10 @@ export const rateLaw: Command = {
         `end value of the signal with its unit, or free; default: free for raw signals, 0 for concentrations`,
     },
     run: { type: "string", value: "ID", multiple: true, help: "only this run; may be repeated" },
+    each: {
+      type: "boolean",
+      help: "each run by itself, not one rate constant for all of a temperature",
+    },
     ...READING_OPTIONS,
   },
   permissions: (operands) => operands.length > 0 ? [allowRead(operands)] : [],
@@ -36,7 +41,8 @@ export const rateLaw: Command = {
     const runs = wanted.length > 0 ? all.filter((run) => wanted.includes(run.id)) : all;
     const order = orderOf(values);
     const options = { species: textOf(values, "species"), endValue: textOf(values, "end-value") };
-    const results: Result[] = [...runs.groupBy("temperature").values()].map((group) =>
+    const groups = values.each ? [...runs].map((run) => [run]) : byTemperature(runs);
+    const results: Result[] = groups.map((group) =>
       order === undefined
         ? compareRateLaws(group, options)
         : fitRateLaw(group, { ...options, order })
@@ -47,3 +53,11 @@ export const rateLaw: Command = {
     };
   },
 };
+
+/** Runs that share a temperature; those that have none count as sharing one. */
+function byTemperature(runs: RunSet): RunSet[] {
+  return [
+    ...runs.groupBy((run) => run.temperature === undefined ? "" : run.temperature.toFixed(2))
+      .values(),
+  ];
+}

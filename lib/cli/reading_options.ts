@@ -1,5 +1,5 @@
 import type { ReadRunsOptions } from "../run/read_runs.ts";
-import { type CommandOption, type CommandValues, textOf, UsageError } from "./command.ts";
+import { type CommandOption, type CommandValues, textOf, textsOf, UsageError } from "./command.ts";
 
 /** Options that say how run files are written, for every command that reads them. */
 export const READING_OPTIONS: Readonly<Record<string, CommandOption>> = {
@@ -7,6 +7,13 @@ export const READING_OPTIONS: Readonly<Record<string, CommandOption>> = {
   layout: { type: "string", value: "FORM", help: "long, wide or single; found out by itself" },
   separator: { type: "string", value: "CHARACTER", help: "between cells: , ; or tab" },
   decimal: { type: "string", value: "MARK", help: "decimal mark: . or ," },
+  initial: {
+    type: "string",
+    value: "SPECIES=VALUE",
+    multiple: true,
+    help: `initial concentration in all runs, such as "A=10 mmol/L"; may be repeated`,
+  },
+  temperature: { type: "string", value: "VALUE", help: `temperature of all runs, such as "25 °C"` },
 };
 
 /** The reading options as `readRuns` takes them.
@@ -20,7 +27,21 @@ export function readingOptions(values: CommandValues): ReadRunsOptions {
       ? "\t"
       : separator as "," | ";" | undefined,
     decimal: choice(values, "decimal", [".", ","]),
+    temperature: textOf(values, "temperature"),
+    initial: initialConcentrations(values),
   };
+}
+
+function initialConcentrations(values: CommandValues): Record<string, string> | undefined {
+  const given = textsOf(values, "initial");
+  if (given.length === 0) return undefined;
+  return Object.fromEntries(given.map((text) => {
+    const match = /^(.+?)=(.+)$/.exec(text);
+    if (match) return [match[1].trim(), match[2].trim()];
+    throw new UsageError(
+      `Cannot use "${text}" as --initial: write a species and a value, "A=10 mmol/L"`,
+    );
+  }));
 }
 
 function choice<T extends string>(

@@ -264,7 +264,7 @@ function checkConcentrations(
   if (signals.length > 1) {
     throw new RangeError(
       `Cannot share a rate constant of order ${order} between runs: the initial concentration of ` +
-        `the reactant is not known for ${ids}; give initialConcentrations (and the option "reactant" ` +
+        `the reactant is not known for ${ids}; give initial concentrations (and the option "reactant" ` +
         `where there are several), or fit the runs one by one`,
     );
   }

@@ -51,6 +51,13 @@ export function orderVerdict(
         `concentrations`,
     );
   }
+  if (!Number.isFinite(first.fit.correctedAkaike)) {
+    return refusal(
+      "too-few-readings",
+      `The order cannot be told: ${first.fit.readingCount} readings are too few to compare laws with ` +
+        `${first.fit.parameters.length} parameters; take more readings`,
+    );
+  }
   if (second && second.difference < LEAST_DIFFERENCE) {
     return refusal(
       "orders-not-distinguishable",

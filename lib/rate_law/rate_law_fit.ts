@@ -119,13 +119,17 @@ export class RateLawFit extends Result {
     this.sources = parts.sources;
   }
 
+  /** Number of readings that went in. */
+  get readingCount(): number {
+    return this.runs.reduce((sum, run) => sum + run.signal.values.length, 0);
+  }
+
   /** First line of every view. */
   override get title(): string {
-    const readings = this.runs.reduce((sum, run) => sum + run.signal.values.length, 0);
     const runs = this.runs.length === 1 ? `run ${this.runs[0].run}` : `${this.runs.length} runs`;
     const order = this.orderIsFitted ? "order fitted" : `order ${this.order.value}`;
     const end = this.converged ? "" : ", NOT CONVERGED";
-    return `Rate law of ${this.species}, ${order}: ${runs}, ${readings} readings${end}`;
+    return `Rate law of ${this.species}, ${order}: ${runs}, ${this.readingCount} readings${end}`;
   }
 
   /** The fitted run of this id.

@@ -45,6 +45,17 @@ describe("rate-law", () => {
   });
 });
 
+test("raw signals: each run by itself, or with an initial concentration from the command line", async () => {
+  const file = "data/e17_absorbance.csv";
+  const together = await ratebook(["rate-law", file]);
+  expect(together.code).toBe(2);
+  expect(together.err).toContain("initial concentration");
+  const each = await ratebook(["rate-law", file, "--each"]);
+  expect(each.out.match(/verdict\s+Order 1/g)?.length).toBe(2);
+  const known = await ratebook(["rate-law", file, "--initial", "E-17=5 mmol/L"]);
+  expect(known.out).toMatch(/L mol⁻¹ s⁻¹/);
+});
+
 describe("arrhenius", () => {
   test("energy in another unit, prediction with its caution", async () => {
     const { code, out } = await ratebook([

@@ -78,6 +78,15 @@ describe("verdicts", () => {
     expect(comparison.verdict).toMatch(/1\.3 half-lives were followed and at least 2/);
   });
 
+  test("too few readings for AICc: no order is named", () => {
+    const times = [0, 300, 700, 1500];
+    const run = makeRun({ times, values: times.map((t) => 0.01 * Math.exp(-t / 400)) });
+    const comparison = compareRateLaws(run);
+    expect(comparison.best).toBeUndefined();
+    expect(comparison.cautions[0].code).toBe("too-few-readings");
+    expect(comparison.verdict).toContain("4 readings are too few");
+  });
+
   test("runs from different concentrations tell the order although few half-lives were followed", () => {
     const runs = [0.01, 0.04].map((c0) => simulated(2, 0.6, 0.01, 3, c0));
     expect(compareRateLaws(runs).best?.order.value).toBe(2);
