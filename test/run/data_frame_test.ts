@@ -37,7 +37,10 @@ test("a data frame made by the user is read by its headers, units and all", asyn
   const { DataFrame } = { DataFrame: frame.constructor } as unknown as {
     DataFrame: new (rows: unknown) => never;
   };
-  const own = new DataFrame([{ "time [h]": 0, "A [mM]": 4 }, { "time [h]": 1, "A [mM]": null }]);
+  const own = new DataFrame([{ "time [h]": 0, "A [mM]": 4 }, { "time [h]": 1, "A [mM]": null }, {
+    "time [h]": null,
+    "A [mM]": NaN,
+  }]);
   const [run] = await readRuns(own);
   expect([...run.times]).toEqual([0, 3600]);
   expect([...run.signal("A").values]).toEqual([0.004, NaN]);

@@ -140,6 +140,7 @@ test("a run shows its facts and readings, censored ones as they were written", (
   const text = String(run.without([0], "spilt"));
   expect(text).toMatch(/Run 7, 4 readings/);
   expect(text).toMatch(/298\.15 K/);
+  expect(text).not.toMatch(/not shown/);
   expect(text).toMatch(/time \/ s +ester \/ \(mol\/L\) +u\(ester\) \/ \(mol\/L\) +left out/);
   expect(text).toMatch(/^ +0 +0\.01000 +1\.0×10⁻⁴ +spilt$/m);
   expect(text).toMatch(/^ +600 +<0\.5 +–$/m);
