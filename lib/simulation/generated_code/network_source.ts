@@ -1,0 +1,62 @@
+import type { JacobianStructure } from "../jacobian_structure.ts";
+import type { ReactionNetwork } from "../reaction_network.ts";
+import { literal, sum } from "./source_text.ts";
+
+/** Source of one rate: `k[j] * u0 * u1`, with the name of species i given by `name`. */
+export function rateText(
+  network: ReactionNetwork,
+  j: number,
+  name: (species: number) => string,
+): string {
+  return [`k[${j}]`, ...network.reactions[j].reactants.map(name)].join(" * ");
+}
+
+/** For each species, the reactions that change it and by how much. */
+export function changesBySpecies(network: ReactionNetwork): [number, number][][] {
+  const lists: [number, number][][] = Array.from({ length: network.size }, () => []);
+  network.reactions.forEach(({ changed, change }, j) => {
+    changed.forEach((i, q) => lists[i].push([change[q], j]));
+  });
+  return lists;
+}
+
+/** Statements for the rates v0, v1 …, then f0, f1 … as constants. */
+export function rightSideStatements(
+  network: ReactionNetwork,
+  name: (species: number) => string,
+): string[] {
+  const statements = network.reactions.map((_, j) =>
+    `const v${j} = ${rateText(network, j, name)};`
+  );
+  changesBySpecies(network).forEach((terms, i) => {
+    statements.push(`const f${i} = ${sum(terms.map(([factor, j]) => [factor, `v${j}`]))};`);
+  });
+  return statements;
+}
+
+/** Statements for the entries of J into the array `J`, from species values named by `name`. */
+export function jacobianStatements(
+  network: ReactionNetwork,
+  structure: JacobianStructure,
+  name: (species: number) => string,
+): string[] {
+  const statements: string[] = [];
+  const entries: [number, string][][] = Array.from(
+    { length: structure.jacobianColumn.length },
+    () => [],
+  );
+  for (let p = 0; p < structure.partialReaction.length; p++) {
+    const j = structure.partialReaction[p];
+    const others = [...network.reactions[j].reactants];
+    others.splice(others.indexOf(structure.partialSpecies[p]), 1);
+    const order = structure.partialOrder[p];
+    const factors = [`k[${j}]`, ...others.map(name)];
+    if (order !== 1) factors.unshift(literal(order));
+    statements.push(`const d${p} = ${factors.join(" * ")};`);
+    for (let q = structure.targetStart[p]; q < structure.targetStart[p + 1]; q++) {
+      entries[structure.target[q]].push([structure.targetFactor[q], `d${p}`]);
+    }
+  }
+  entries.forEach((terms, q) => statements.push(`J[${q}] = ${sum(terms)};`));
+  return statements;
+}

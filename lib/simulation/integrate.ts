@@ -1,0 +1,79 @@
+import type { Integrator } from "./integrator.ts";
+
+/** What an integration is to do. */
+export interface IntegrationPlan {
+  /** Output times, ascending, none before the integrator's time, s. */
+  readonly times: Float64Array;
+  /** Called with each output in turn; the array is overwritten afterwards. */
+  readonly output: (index: number, y: Float64Array) => void;
+  /** Most steps to take. */
+  readonly maxSteps: number;
+  /** Stops the integration when aborted. */
+  readonly signal?: AbortSignal;
+  /** Called now and then with the time reached and the steps taken. */
+  readonly progress?: (time: number, steps: number) => void;
+}
+
+/** How an integration ended. */
+export interface IntegrationEnd {
+  /** Whether every output was reached. */
+  readonly finished: boolean;
+  /** What stopped it, if anything did. */
+  readonly what?: "steps" | "aborted" | "failed";
+  /** Words about the failure. */
+  readonly detail?: string;
+  /** Species at fault, in the kernel's numbering; −1 if none. */
+  readonly species: number;
+  /** Outputs reached. */
+  readonly outputs: number;
+}
+
+/** Steps between two looks at the signal and two calls of `progress`. */
+const STEPS_BETWEEN_LOOKS = 32;
+
+/** Drives an integrator over the output times.
+ *
+ * An output that stands alone is reached by a step that ends there; outputs that lie close together
+ * compared with the steps are read from the dense output. */
+export function integrate(integrator: Integrator, plan: IntegrationPlan): IntegrationEnd {
+  const { times, output, maxSteps, signal, progress } = plan;
+  const count = times.length;
+  const between = new Float64Array(integrator.y.length);
+  let next = 0;
+  let steps = 0;
+  while (next < count && times[next] <= integrator.t) output(next++, integrator.y);
+  while (next < count) {
+    if (steps % STEPS_BETWEEN_LOOKS === 0) {
+      if (steps > 0) progress?.(integrator.t, steps);
+      if (signal?.aborted) {
+        return { finished: false, what: "aborted", species: -1, outputs: next };
+      }
+    }
+    if (steps >= maxSteps) {
+      return { finished: false, what: "steps", species: -1, outputs: next };
+    }
+    const h = integrator.stepSize;
+    const alone = next + 1 === count || times[next + 1] > times[next] + h;
+    const near = times[next] <= integrator.t + 2 * h;
+    const failure = integrator.advance(alone && near ? times[next] : times[count - 1]);
+    if (failure) {
+      return {
+        finished: false,
+        what: "failed",
+        detail: failure.what,
+        species: failure.species,
+        outputs: next,
+      };
+    }
+    steps++;
+    while (next < count && times[next] <= integrator.t) {
+      if (times[next] === integrator.t) output(next, integrator.y);
+      else {
+        integrator.interpolate(times[next], between);
+        output(next, between);
+      }
+      next++;
+    }
+  }
+  return { finished: true, species: -1, outputs: next };
+}

@@ -1,0 +1,140 @@
+import type { JacobianStructure } from "./jacobian_structure.ts";
+import type { Kernel } from "./kernel.ts";
+import type { ReactionNetwork } from "./reaction_network.ts";
+import { SparseFactors } from "./sparse_factors.ts";
+
+/** A kernel that walks flat tables: the path for large networks, and the twin that generated code is
+ * held against. */
+export class InterpretedKernel implements Kernel {
+  readonly size: number;
+  readonly reactionCount: number;
+  readonly generated = false;
+  readonly #structure: JacobianStructure;
+  readonly #factors: SparseFactors;
+  readonly #jacobian: Float64Array;
+  /** Three reactant places a reaction; an absent one points at the constant 1 behind the species. */
+  readonly #reactants: Int32Array;
+  /** The other reactants of each partial derivative, two places each. */
+  readonly #others: Int32Array;
+  readonly #changeStart: Int32Array;
+  readonly #changed: Int32Array;
+  readonly #change: Float64Array;
+  readonly #padded: Float64Array;
+  readonly #slope: Float64Array;
+
+  /** @param network species numbered in elimination order
+   * @param structure its symbolic factorization */
+  constructor(network: ReactionNetwork, structure: JacobianStructure) {
+    const n = network.size;
+    const m = network.reactions.length;
+    this.size = n;
+    this.reactionCount = m;
+    this.#structure = structure;
+    this.#factors = new SparseFactors(structure);
+    this.#jacobian = new Float64Array(structure.jacobianColumn.length);
+    this.#padded = new Float64Array(n + 1).fill(1);
+    this.#slope = new Float64Array(n);
+    this.#reactants = new Int32Array(3 * m).fill(n);
+    this.#changeStart = new Int32Array(m + 1);
+    network.reactions.forEach(({ reactants, changed }, j) => {
+      this.#reactants.set(reactants, 3 * j);
+      this.#changeStart[j + 1] = this.#changeStart[j] + changed.length;
+    });
+    this.#changed = Int32Array.from(network.reactions.flatMap((r) => r.changed));
+    this.#change = Float64Array.from(network.reactions.flatMap((r) => r.change));
+    const partials = structure.partialReaction.length;
+    this.#others = new Int32Array(2 * partials).fill(n);
+    for (let p = 0; p < partials; p++) {
+      const others = [...network.reactions[structure.partialReaction[p]].reactants];
+      others.splice(others.indexOf(structure.partialSpecies[p]), 1);
+      this.#others.set(others, 2 * p);
+    }
+  }
+
+  rates(y: Float64Array, k: Float64Array, rates: Float64Array): void {
+    const padded = this.#padded;
+    const reactants = this.#reactants;
+    const n = this.size;
+    for (let i = 0; i < n; i++) padded[i] = y[i];
+    for (let j = 0, a = 0; j < this.reactionCount; j++, a += 3) {
+      rates[j] = k[j] * padded[reactants[a]] * padded[reactants[a + 1]] * padded[reactants[a + 2]];
+    }
+  }
+
+  rightSide(y: Float64Array, k: Float64Array, dydt: Float64Array): void {
+    const padded = this.#padded;
+    const reactants = this.#reactants;
+    const start = this.#changeStart;
+    const changed = this.#changed;
+    const change = this.#change;
+    const n = this.size;
+    const m = this.reactionCount;
+    for (let i = 0; i < n; i++) {
+      padded[i] = y[i];
+      dydt[i] = 0;
+    }
+    let q = 0;
+    for (let j = 0, a = 0; j < m; j++, a += 3) {
+      const rate = k[j] * padded[reactants[a]] * padded[reactants[a + 1]] *
+        padded[reactants[a + 2]];
+      for (const end = start[j + 1]; q < end; q++) dydt[changed[q]] += change[q] * rate;
+    }
+  }
+
+  linearize(y: Float64Array, k: Float64Array): void {
+    const { partialReaction, partialOrder, targetStart, target, targetFactor } = this.#structure;
+    const padded = this.#padded;
+    const others = this.#others;
+    const jacobian = this.#jacobian;
+    for (let i = 0; i < this.size; i++) padded[i] = y[i];
+    jacobian.fill(0);
+    let q = 0;
+    for (let p = 0, o = 0; p < partialReaction.length; p++, o += 2) {
+      const partial = partialOrder[p] * k[partialReaction[p]] * padded[others[o]] *
+        padded[others[o + 1]];
+      for (const end = targetStart[p + 1]; q < end; q++) {
+        jacobian[target[q]] += targetFactor[q] * partial;
+      }
+    }
+  }
+
+  timesJacobian(vector: Float64Array, product: Float64Array): void {
+    const { jacobianStart, jacobianColumn } = this.#structure;
+    const jacobian = this.#jacobian;
+    let q = 0;
+    for (let i = 0; i < this.size; i++) {
+      let sum = 0;
+      for (const end = jacobianStart[i + 1]; q < end; q++) {
+        sum += jacobian[q] * vector[jacobianColumn[q]];
+      }
+      product[i] = sum;
+    }
+  }
+
+  factor(d: number): boolean {
+    return this.#factors.factor(d, this.#jacobian);
+  }
+
+  solve(x: Float64Array): void {
+    this.#factors.solve(x);
+  }
+
+  solveStage(u: Float64Array, k: Float64Array, x: Float64Array): void {
+    const slope = this.#slope;
+    this.rightSide(u, k, slope);
+    for (let i = 0; i < this.size; i++) x[i] = slope[i] + x[i];
+    this.#factors.solve(x);
+  }
+
+  /** Entries of J of the last {@link linearize}, dense and row-major, for tests. */
+  denseJacobian(): Float64Array {
+    const { jacobianStart, jacobianColumn } = this.#structure;
+    const dense = new Float64Array(this.size * this.size);
+    for (let i = 0; i < this.size; i++) {
+      for (let q = jacobianStart[i]; q < jacobianStart[i + 1]; q++) {
+        dense[i * this.size + jacobianColumn[q]] = this.#jacobian[q];
+      }
+    }
+    return dense;
+  }
+}

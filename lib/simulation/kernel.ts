@@ -1,0 +1,25 @@
+/** The numbers of a network, as an integrator asks for them: f = dy/dt, the Jacobian J = ∂f/∂y, and
+ * systems with I/(hγ) − J. Species are numbered in the kernel's own order. Nothing is allocated after
+ * the kernel is made; a kernel holds one Jacobian and one factorization. */
+export interface Kernel {
+  /** Number of species. */
+  readonly size: number;
+  /** Number of reactions. */
+  readonly reactionCount: number;
+  /** Whether it runs as generated code. */
+  readonly generated: boolean;
+  /** Rates of the reactions v = k ∏ y into `rates`. */
+  rates(y: Float64Array, k: Float64Array, rates: Float64Array): void;
+  /** f(y) into `dydt`; linear in k, so that k̇ in place of k gives ∂f/∂t. */
+  rightSide(y: Float64Array, k: Float64Array, dydt: Float64Array): void;
+  /** Evaluates J at y and keeps it. */
+  linearize(y: Float64Array, k: Float64Array): void;
+  /** J of the last {@link linearize} times a vector. */
+  timesJacobian(vector: Float64Array, product: Float64Array): void;
+  /** Factors d I − J with the J of the last {@link linearize}; false where a pivot is 0 or not finite. */
+  factor(d: number): boolean;
+  /** Solves (d I − J) x = b with the last factors, b in `x` on entry. */
+  solve(x: Float64Array): void;
+  /** Solves (d I − J) x = f(u) + b with the last factors, b in `x` on entry: one stage. */
+  solveStage(u: Float64Array, k: Float64Array, x: Float64Array): void;
+}
