@@ -1,3 +1,4 @@
+import { BackwardDifferentiation } from "./backward_differentiation.ts";
 import type { Integrator } from "./integrator.ts";
 import type { Kernel } from "./kernel.ts";
 import type { RateCoefficients } from "./rate_coefficients.ts";
@@ -14,6 +15,6 @@ export function chooseIntegrator(
   rtol: number,
   atol: Float64Array,
 ): Integrator {
-  void method;
+  if (method === "bdf") return new BackwardDifferentiation(kernel, coefficients, rtol, atol);
   return new Rosenbrock(kernel, coefficients, rtol, atol);
 }

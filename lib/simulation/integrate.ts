@@ -53,9 +53,11 @@ export function integrate(integrator: Integrator, plan: IntegrationPlan): Integr
       return { finished: false, what: "steps", species: -1, outputs: next };
     }
     const h = integrator.stepSize;
-    const alone = next + 1 === count || times[next + 1] > times[next] + h;
+    const alone = integrator.endsOnOutputs &&
+      (next + 1 === count || times[next + 1] > times[next] + h);
     const near = times[next] <= integrator.t + 2 * h;
-    const failure = integrator.advance(alone && near ? times[next] : times[count - 1]);
+    const last = integrator.endsOnOutputs ? times[count - 1] : Infinity;
+    const failure = integrator.advance(alone && near ? times[next] : last);
     if (failure) {
       return {
         finished: false,

@@ -27,6 +27,8 @@ export interface IntegratorCounts {
 export interface Integrator {
   /** Name of the method. */
   readonly name: string;
+  /** Whether steps should end on outputs that stand alone, being the more exact there. */
+  readonly endsOnOutputs: boolean;
   /** Time reached, s. */
   readonly t: number;
   /** Start of the last step, s. */

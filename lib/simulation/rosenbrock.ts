@@ -18,6 +18,7 @@ import { StepController } from "./step_controller.ts";
  * 2nd ed., Springer 1996, sec. IV.7. */
 export class Rosenbrock implements Integrator {
   readonly name = "rosenbrock";
+  readonly endsOnOutputs = true;
   readonly counts: IntegratorCounts = {
     accepted: 0,
     rejected: 0,
