@@ -1,3 +1,4 @@
+import { fileURLToPath } from "node:url";
 import type { ParseArgsOptionDescriptor } from "node:util";
 
 /** An option of a command: how it is parsed, and what it is for. */
@@ -52,6 +53,14 @@ export class UsageError extends SyntaxError {
 export function allowRead(paths: readonly string[]): string {
   return `--allow-read=${paths.map((path) => path.replaceAll(",", ",,")).join(",")}`;
 }
+
+/** The flag that lets a process write these files. */
+export function allowWrite(paths: readonly string[]): string {
+  return allowRead(paths).replace("--allow-read", "--allow-write");
+}
+
+/** Folder of the library, from which a figure's drawing is loaded when it is asked for. */
+export const LIBRARY: string = fileURLToPath(new URL("../", import.meta.url));
 
 /** A value of an option that was given once, as text. */
 export function textOf(values: CommandValues, name: string): string | undefined {

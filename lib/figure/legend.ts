@@ -25,7 +25,7 @@ const CHARACTER_WIDTH = 6.6;
  * @param entries in reading order @param width width to fill, px */
 export function drawLegend(entries: readonly LegendEntry[], width: number): Panel {
   const longest = Math.max(...entries.map((entry) => entry.label.length));
-  const cell = KEY_WIDTH + 14 + longest * CHARACTER_WIDTH;
+  const cell = KEY_WIDTH + 24 + longest * CHARACTER_WIDTH;
   const columns = Math.max(1, Math.floor((width - 40) / cell));
   const rows = Math.ceil(entries.length / columns);
   const height = rows * ROW_HEIGHT + 6;

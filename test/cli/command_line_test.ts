@@ -79,7 +79,11 @@ describe("arrhenius", () => {
 describe("bad input ends with code 2 and its reason on standard error", () => {
   test.each([
     ["no command", [], /^$/],
-    ["an unknown command", ["fit"], /Cannot run "fit": there are rate-law, arrhenius, report/],
+    [
+      "an unknown command",
+      ["fit"],
+      /Cannot run "fit": there are rate-law, arrhenius, simulate, report/,
+    ],
     ["an unknown option", ["rate-law", "x.csv", "--ordr", "1"], /--ordr/],
     ["a file that is not there", ["rate-law", "nowhere.csv"], /nowhere\.csv/],
     ["no file", ["arrhenius"], /name a file of runs/],
@@ -117,6 +121,50 @@ test("help lists commands and options", async () => {
   expect(all.out).toContain("arrhenius FILE …");
   const one = await ratebook(["arrhenius", "--help"]);
   expect(one.out).toContain("--at TEMPERATURE");
+});
+
+describe("simulate", () => {
+  test("a table, a figure, and CSV that is read back as a run", async () => {
+    const folder = await Deno.makeTempDir();
+    try {
+      const { code, out, err } = await ratebook([
+        ...["simulate", "data/consecutive.toml"],
+        ...["--csv", `${folder}/out.csv`, "--svg", `${folder}/out.svg`],
+      ]);
+      expect(err).toBe("");
+      expect(code).toBe(0);
+      expect(out).toContain("every output time was reached");
+      expect(await Deno.readTextFile(`${folder}/out.svg`)).toMatch(/^<svg/);
+      const { readRuns } = await import("../../lib/run/read_runs.ts");
+      const run = (await readRuns(`${folder}/out.csv`, { layout: "single" })).find("out");
+      // A + B ⇌ C, C → D: [A] + [C] + [D] is conserved.
+      const [a, c, d] = ["A", "C", "D"].map((name) => run.signal(name).values);
+      a.forEach((value, i) => expect(value + c[i] + d[i]).toBeCloseTo(0.01, 12));
+    } finally {
+      await Deno.remove(folder, { recursive: true });
+    }
+  });
+
+  test.each([
+    [`mechanism = "A ->[k] B"\n[rate_constants]\nk = 1`, /"times" is missing/],
+    [`mechanism = "A => B"`, /"rate_constants" is missing/],
+    [`mechanism = `, /as TOML/],
+    [
+      `mechanism = "A ->[k] B"\n[rate_constants]\nk = 1\n[times]\nuntil = "3 m"`,
+      /measures length, expected time/,
+    ],
+    [`mecanism = "A -> B"`, /did you mean "mechanism"/],
+  ])("%j is bad input", async (text, reason) => {
+    const file = await Deno.makeTempFile({ suffix: ".toml" });
+    try {
+      await Deno.writeTextFile(file, text);
+      const { code, err } = await ratebook(["simulate", file]);
+      expect(err).toMatch(reason);
+      expect(code).toBe(2);
+    } finally {
+      await Deno.remove(file);
+    }
+  });
 });
 
 describe("report", () => {
