@@ -1,6 +1,6 @@
 import { parseMechanism } from "../mechanism/parse_mechanism.ts";
 import * as option from "../quantity/options.ts";
-import { simulate, type SimulateOptions } from "../simulation/simulate.ts";
+import { simulate } from "../simulation/simulate.ts";
 import { simulateStochastic } from "../simulation/simulate_stochastic.ts";
 import type { StochasticTrajectory } from "../simulation/stochastic_trajectory.ts";
 import type { Trajectory } from "../simulation/trajectory.ts";

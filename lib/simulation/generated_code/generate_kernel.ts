@@ -6,7 +6,7 @@ import { factorStatements, solveStatements } from "./factor_source.ts";
 import { jacobianStatements, rightSideStatements } from "./network_source.ts";
 
 /** A kernel of one network as straight-line code. Its operations are those of the interpreted kernel
- * in the same order, so the two agree to the last bit but for the sign of a zero.
+ * in the same order but for sums of long rows, so the two agree to rounding.
  *
  * @returns a maker of kernels, each with arrays of its own */
 export function generateKernel(
