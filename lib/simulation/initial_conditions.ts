@@ -1,14 +1,15 @@
 import { closest, distance } from "fastest-levenshtein";
 import type { Mechanism } from "../mechanism/mechanism.ts";
 import type { CompiledNetwork } from "./compiled_network.ts";
+import { type RateExpression, type RateFunction, rateFunctionOf } from "./rate_expression.ts";
 
-/** Rate coefficient of each reaction; that of a step with a third body is k [M]. */
-export function rateCoefficientsOf(
+/** Rate coefficient of each reaction as a function of temperature; that of a step with a third body is k [M]. */
+export function rateFunctionsOf(
   mechanism: Mechanism,
   compiled: CompiledNetwork,
-  rateConstants: Readonly<Record<string, number>> | undefined,
+  rateConstants: Readonly<Record<string, RateExpression>> | undefined,
   initial: Readonly<Record<string, number>> | undefined,
-): Float64Array {
+): ((temperature: number) => number)[] {
   const given = rateConstants ?? {};
   const symbols = new Set(mechanism.rateConstants);
   for (const symbol of Object.keys(given)) {
@@ -28,10 +29,28 @@ export function rateCoefficientsOf(
       `Cannot simulate steps with a third body M without its concentration: add M to initial`,
     );
   }
-  return Float64Array.from(compiled.origins, ({ rateConstant, step }) => {
-    const k = given[mechanism.rateConstants[rateConstant]];
-    return mechanism.steps[step].thirdBody ? k * thirdBody! : k;
+  const functions = rateFunctions(mechanism.rateConstants, given);
+  return compiled.origins.map(({ rateConstant, step }) => {
+    const k = functions.get(mechanism.rateConstants[rateConstant])!;
+    return mechanism.steps[step].thirdBody
+      ? (temperature) => k(temperature, thirdBody) * thirdBody!
+      : (temperature) => k(temperature, thirdBody);
   });
+}
+
+/** The function of each symbol; a reverse constant may name a forward one that is itself no reverse. */
+function rateFunctions(
+  symbols: readonly string[],
+  given: Readonly<Record<string, RateExpression>>,
+): Map<string, RateFunction> {
+  return new Map(symbols.map((symbol) => {
+    const forward = (name: string): RateFunction => {
+      const expression = given[name];
+      if (expression === undefined) throw unknownName("rate constant", name, symbols);
+      return rateFunctionOf(expression);
+    };
+    return [symbol, rateFunctionOf(given[symbol], forward)];
+  }));
 }
 
 /** Concentrations at the start, in the kernel's numbering. */
@@ -44,7 +63,7 @@ export function initialState(
   const index = new Map(mechanism.species.map((name, i) => [name, i]));
   const thirdBody = mechanism.steps.some((step) => step.thirdBody);
   for (const [species, value] of Object.entries(initial ?? {})) {
-    if (species === "M" && thirdBody) continue;
+    if (species === "M" && (thirdBody || !index.has("M"))) continue;
     const i = index.get(species);
     if (i === undefined) throw unknownName("species", species, mechanism.species);
     state[compiled.place[i]] = value;

@@ -79,3 +79,44 @@ export function integrate(integrator: Integrator, plan: IntegrationPlan): Integr
   }
   return { finished: true, species: -1, outputs: next };
 }
+
+/** As {@link integrate}, starting anew at each time where the coefficients bend, so that no step reaches across.
+ *
+ * @param bends times, s, ascending */
+export function integrateInParts(
+  integrator: Integrator,
+  bends: readonly number[],
+  plan: IntegrationPlan,
+): IntegrationEnd {
+  const { times, output } = plan;
+  const last = times[times.length - 1];
+  const inside = bends.filter((bend) => bend > integrator.t && bend < last);
+  let done = 0;
+  let steps = 0;
+  for (const bend of inside) {
+    const before = times.subarray(done).findIndex((t) => t > bend);
+    const own = times.subarray(done, before < 0 ? undefined : done + before);
+    const reachesBend = own.length > 0 && own[own.length - 1] === bend;
+    const part = reachesBend ? own : Float64Array.from([...own, bend]);
+    const end = integrate(integrator, {
+      ...plan,
+      times: part,
+      maxSteps: plan.maxSteps - steps,
+      output: (i, y) => {
+        if (i < own.length) output(done + i, y);
+      },
+    });
+    if (!end.finished) return { ...end, outputs: done + Math.min(end.outputs, own.length) };
+    done += own.length;
+    steps = integrator.counts.accepted;
+    integrator.start(bend, integrator.y.slice(), integrator.stepSize);
+  }
+  const from = done;
+  const end = integrate(integrator, {
+    ...plan,
+    times: times.subarray(from),
+    maxSteps: plan.maxSteps - steps,
+    output: (i, y) => output(from + i, y),
+  });
+  return { ...end, outputs: from + end.outputs };
+}

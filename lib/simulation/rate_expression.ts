@@ -69,35 +69,27 @@ export type RateExpression =
   | FallOffExpression
   | ReverseExpression;
 
-/** Where rate constants are evaluated. */
-export interface RateConditions {
-  /** Temperature, K. */
-  readonly temperature: number;
-  /** Concentration of the third body M, mol/L, where there is one. */
-  readonly thirdBody?: number;
-}
+/** A rate constant as a function of temperature, K, and [M], mol/L. */
+export type RateFunction = (temperature: number, thirdBody: number | undefined) => number;
 
-/** Evaluates a rate constant.
+/** Makes a function of temperature and [M] from the way a rate constant is given; units are read once.
  *
  * @param expression how it is given
- * @param conditions temperature and [M]
- * @param others values of other symbols, for reverse constants
- * @returns k, in mol/L and s
- * @throws {RangeError} if a fall-off constant lacks [M], a forward symbol does not exist, or an equilibrium
- * constant is not positive
+ * @param others functions of other symbols, for reverse constants
+ * @throws {RangeError} if a forward symbol does not exist or a value is out of range
  * @throws {TypeError} on an object that is none of the known forms */
-export function rateConstantOf(
+export function rateFunctionOf(
   expression: RateExpression,
-  conditions: RateConditions,
-  others: (symbol: string) => number = noOthers,
-): number {
-  if (typeof expression === "number") return expression;
-  const { temperature } = conditions;
-  if ("activationEnergy" in expression) return arrhenius(expression, temperature);
-  if ("activationEnthalpy" in expression) return eyring(expression, temperature);
-  if ("lowPressure" in expression) return fallOff(expression, conditions);
+  others: (symbol: string) => RateFunction = noOthers,
+): RateFunction {
+  if (typeof expression === "number") return () => expression;
+  if ("activationEnergy" in expression) return arrhenius(expression);
+  if ("activationEnthalpy" in expression) return eyring(expression);
+  if ("lowPressure" in expression) return fallOff(expression);
   if ("forward" in expression) {
-    return others(expression.forward) / equilibriumConstant(expression, temperature);
+    const forward = others(expression.forward);
+    const constant = equilibriumConstant(expression);
+    return (temperature, thirdBody) => forward(temperature, thirdBody) / constant(temperature);
   }
   throw new TypeError(
     `Cannot read a rate constant from ${JSON.stringify(expression)}: write a number, or ` +
@@ -122,62 +114,69 @@ function noOthers(symbol: string): never {
   );
 }
 
-function arrhenius(expression: ArrheniusExpression, temperature: number): number {
+function arrhenius(expression: ArrheniusExpression): RateFunction {
   const energy = readQuantity(expression.activationEnergy, "kJ/mol", "an activation energy") * 1000;
   const n = expression.temperatureExponent ?? 0;
-  const reference = expression.referenceTemperature === undefined
-    ? 1
-    : readQuantity(expression.referenceTemperature, "K", "a reference temperature");
-  const power = n === 0 ? 1 : (temperature / reference) ** n;
-  return expression.preExponentialFactor * power * Math.exp(-energy / (GAS_CONSTANT * temperature));
+  const reference = readQuantity(
+    expression.referenceTemperature ?? 1,
+    "K",
+    "a reference temperature",
+  );
+  const slope = energy / GAS_CONSTANT;
+  return (temperature) =>
+    expression.preExponentialFactor * (n === 0 ? 1 : (temperature / reference) ** n) *
+    Math.exp(-slope / temperature);
 }
 
-function eyring(expression: EyringExpression, temperature: number): number {
+function eyring(expression: EyringExpression): RateFunction {
   const enthalpy = readQuantity(expression.activationEnthalpy, "kJ/mol", "an activation enthalpy") *
     1000;
   const entropy = readQuantity(expression.activationEntropy, "J/(mol K)", "an activation entropy");
-  return (expression.transmissionCoefficient ?? 1) * BOLTZMANN_CONSTANT * temperature /
-    PLANCK_CONSTANT *
-    Math.exp(entropy / GAS_CONSTANT - enthalpy / (GAS_CONSTANT * temperature));
+  const factor = (expression.transmissionCoefficient ?? 1) * BOLTZMANN_CONSTANT / PLANCK_CONSTANT *
+    Math.exp(entropy / GAS_CONSTANT);
+  return (temperature) => factor * temperature * Math.exp(-enthalpy / (GAS_CONSTANT * temperature));
 }
 
-function fallOff(expression: FallOffExpression, conditions: RateConditions): number {
-  const { thirdBody } = conditions;
-  if (thirdBody === undefined) {
-    throw new RangeError(
-      `Cannot evaluate a fall-off rate constant: the concentration of M is not given; add it to the ` +
-        `initial concentrations`,
-    );
-  }
-  const low = rateConstantOf(expression.lowPressure, conditions);
-  const high = rateConstantOf(expression.highPressure, conditions);
-  const reduced = low * thirdBody / high;
-  if (reduced === 0) return 0;
-  return high * reduced / (1 + reduced) * broadeningFactor(expression.broadening, reduced);
+function fallOff(expression: FallOffExpression): RateFunction {
+  const low = rateFunctionOf(expression.lowPressure);
+  const high = rateFunctionOf(expression.highPressure);
+  const broaden = broadening(expression.broadening);
+  return (temperature, thirdBody) => {
+    if (thirdBody === undefined) {
+      throw new RangeError(
+        `Cannot evaluate a fall-off rate constant: the concentration of M is not given; add M to the ` +
+          `initial concentrations`,
+      );
+    }
+    const limit = high(temperature, thirdBody);
+    const reduced = low(temperature, thirdBody) * thirdBody / limit;
+    return reduced === 0 ? 0 : limit * reduced / (1 + reduced) * broaden(reduced);
+  };
 }
 
-/** F at a reduced pressure. */
-function broadeningFactor(broadening: Broadening | undefined, reduced: number): number {
-  if (broadening === undefined || broadening.form === "Lindemann") return 1;
-  const { centre, form } = broadening;
+/** F as a function of reduced pressure. */
+function broadening(given: Broadening | undefined): (reduced: number) => number {
+  if (given === undefined || given.form === "Lindemann") return () => 1;
+  const { centre, form } = given;
   if (!(centre > 0 && centre <= 1)) {
     throw new RangeError(
       `Cannot broaden a fall-off curve with the centre ${centre}: it lies above 0 and at most at 1`,
     );
   }
   const width = form === "Troe, N = 1" ? 1 : 0.75 - 1.27 * Math.log10(centre);
-  return centre ** (1 / (1 + (Math.log10(reduced) / width) ** 2));
+  return (reduced) => centre ** (1 / (1 + (Math.log10(reduced) / width) ** 2));
 }
 
-function equilibriumConstant(expression: ReverseExpression, temperature: number): number {
+function equilibriumConstant(expression: ReverseExpression): (temperature: number) => number {
   const given = expression.equilibriumConstant;
-  const value = typeof given === "number" ? given : Math.exp(
-    readQuantity(given.reactionEntropy, "J/(mol K)", "a reaction entropy") / GAS_CONSTANT -
-      readQuantity(given.reactionEnthalpy, "kJ/mol", "a reaction enthalpy") * 1000 /
-        (GAS_CONSTANT * temperature),
-  );
-  if (value > 0) return value;
-  throw new RangeError(
-    `Cannot divide by the equilibrium constant ${value}: it must be more than 0`,
-  );
+  if (typeof given === "number") {
+    if (given > 0) return () => given;
+    throw new RangeError(
+      `Cannot divide by the equilibrium constant ${given}: it must be more than 0`,
+    );
+  }
+  const entropy = readQuantity(given.reactionEntropy, "J/(mol K)", "a reaction entropy");
+  const enthalpy = readQuantity(given.reactionEnthalpy, "kJ/mol", "a reaction enthalpy") * 1000;
+  return (temperature) =>
+    Math.exp(entropy / GAS_CONSTANT - enthalpy / (GAS_CONSTANT * temperature));
 }

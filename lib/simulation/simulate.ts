@@ -9,18 +9,30 @@ import {
   readOptions,
   record,
 } from "../quantity/options.ts";
+import type { Quantity } from "../quantity/read_quantity.ts";
 import { Mechanism } from "../mechanism/mechanism.ts";
 import { compiledNetwork } from "./compiled_network.ts";
 import { firstStep } from "./first_step.ts";
-import { integrate, type IntegrationEnd } from "./integrate.ts";
+import { integrateInParts, type IntegrationEnd } from "./integrate.ts";
 import { chooseIntegrator, type MethodName } from "./choose_integrator.ts";
-import { initialState, rateCoefficientsOf } from "./initial_conditions.ts";
+import { initialState, rateFunctionsOf } from "./initial_conditions.ts";
+import { followTemperature } from "./rate_coefficients.ts";
+import { dependsOnTemperature, type RateExpression } from "./rate_expression.ts";
+import {
+  type TemperatureProgramme,
+  temperatureProgramme,
+  type TemperatureTable,
+} from "./temperature_programme.ts";
 import { Trajectory } from "./trajectory.ts";
 
 /** Options of {@link simulate}. */
 export interface SimulateOptions {
-  /** Value of each rate-constant symbol, in mol/L and s. */
-  readonly rateConstants: Readonly<Record<string, number>>;
+  /** Each rate-constant symbol: its value, in mol/L and s, or how it depends on temperature (Arrhenius,
+   * Eyring), on [M] (fall-off) or on another one (reverse constant from K). */
+  readonly rateConstants: Readonly<Record<string, RateExpression>>;
+  /** Temperature, K or text with its unit, or a table of temperatures in time; needed where a rate constant
+   * depends on it. */
+  readonly temperature?: Quantity | TemperatureTable;
   /** Concentration of each species at the start, mol/L or text with its unit; 0 where not named.
    * `M` is the third body where steps have one. */
   readonly initial: Readonly<Record<string, number | string>>;
@@ -82,20 +94,21 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
   const startTime = given.startTime ?? 0;
   const times = outputTimes(given.times, startTime);
   const rtol = given.rtol ?? 1e-6;
-  const k = rateCoefficientsOf(mechanism, compiled, given.rateConstants, given.initial);
+  const programme = readTemperature(given.temperature, given.rateConstants);
+  const functions = rateFunctionsOf(mechanism, compiled, given.rateConstants, given.initial);
+  const coefficients = followTemperature(functions, programme, startTime);
   const initial = initialState(mechanism, compiled, given.initial);
   const atol = absoluteTolerances(mechanism, compiled.place, given.atol, rtol, initial);
   const kernel = compiled.makeKernel();
-  const coefficients = { k };
   const integrator = chooseIntegrator(given.method, kernel, coefficients, rtol, atol);
   const reach = times.find((t) => t > startTime);
   integrator.start(
     startTime,
     initial,
-    reach === undefined ? 0 : firstStep(kernel, initial, k, reach - startTime, rtol),
+    reach === undefined ? 0 : firstStep(kernel, initial, coefficients.k, reach - startTime, rtol),
   );
   const states: Float64Array[] = [];
-  const end = integrate(integrator, {
+  const end = integrateInParts(integrator, programme.bends, {
     times,
     output: (_, y) => states.push(y.slice()),
     maxSteps: given.maxSteps ?? 100_000,
@@ -110,7 +123,7 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
     times: times.slice(0, end.outputs),
     states,
     initial,
-    rateCoefficients: k,
+    rateCoefficients: coefficients,
     statistics: {
       method: integrator.name,
       generatedCode: kernel.generated,
@@ -122,10 +135,32 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
   });
 }
 
+/** The temperature in time; any where no rate constant asks for it. */
+function readTemperature(
+  given: Quantity | TemperatureTable | undefined,
+  rateConstants: Readonly<Record<string, RateExpression>> | undefined,
+): TemperatureProgramme {
+  if (given !== undefined) return temperatureProgramme(given);
+  const symbol = Object.entries(rateConstants ?? {}).find(([, k]) => dependsOnTemperature(k))?.[0];
+  if (symbol === undefined) return temperatureProgramme(STANDARD_TEMPERATURE);
+  throw new TypeError(
+    `Cannot evaluate the rate constant "${symbol}" without a temperature: add temperature, such as "25 °C"`,
+  );
+}
+
+/** Stands where nothing depends on temperature, K. */
+const STANDARD_TEMPERATURE = 298.15;
+
 const positive = { min: Number.MIN_VALUE };
 
 const READERS = {
-  rateConstants: record(number({ min: 0 })),
+  rateConstants: record((value, name): RateExpression =>
+    typeof value === "object" && value !== null
+      ? value as RateExpression
+      : number({ min: 0 })(value, name)
+  ),
+  temperature: (value: unknown): Quantity | TemperatureTable =>
+    value as Quantity | TemperatureTable,
   initial: record(quantity("mol/L", { atLeast: 0 })),
   times: list(quantity("s")),
   startTime: quantity("s"),

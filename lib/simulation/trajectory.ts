@@ -6,6 +6,7 @@ import { formatStep } from "../mechanism/elementary_step.ts";
 import type { CompiledNetwork } from "./compiled_network.ts";
 import { conservedSums } from "./conserved_quantities.ts";
 import type { IntegratorCounts } from "./integrator.ts";
+import type { RateCoefficients } from "./rate_coefficients.ts";
 
 /** What an integration took. */
 export interface SimulationStatistics extends Readonly<IntegratorCounts> {
@@ -35,7 +36,7 @@ export interface TrajectoryParts {
   /** One row of concentrations an output time, kernel's numbering. */
   readonly states: readonly Float64Array[];
   readonly initial: Float64Array;
-  readonly rateCoefficients: Float64Array;
+  readonly rateCoefficients: RateCoefficients;
   readonly statistics: SimulationStatistics;
   readonly finished: boolean;
   readonly reason: string;
@@ -109,17 +110,15 @@ export class Trajectory extends Result {
       );
     }
     const { compiled, rateCoefficients, states } = this.#parts;
-    const rates = new Float64Array(states.length);
-    compiled.origins.forEach((origin, j) => {
-      if (origin.step !== step - 1) return;
-      const sign = origin.reverse ? -1 : 1;
-      states.forEach((state, at) => {
-        let rate = rateCoefficients[j];
+    return Float64Array.from(states, (state, at) => {
+      rateCoefficients.at?.(this.times[at]);
+      return compiled.origins.reduce((sum, origin, j) => {
+        if (origin.step !== step - 1) return sum;
+        let rate = rateCoefficients.k[j];
         for (const i of compiled.network.reactions[j].reactants) rate *= state[i];
-        rates[at] += sign * rate;
-      });
+        return sum + (origin.reverse ? -rate : rate);
+      }, 0);
     });
-    return rates;
   }
 
   /** Sums of concentrations that no step changes, each with its drift. */
