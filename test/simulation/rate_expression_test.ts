@@ -1,6 +1,19 @@
 import { describe, expect, test } from "vitest";
-import { rateConstantOf } from "../../lib/simulation/rate_expression.ts";
+import {
+  type RateExpression,
+  type RateFunction,
+  rateFunctionOf,
+} from "../../lib/simulation/rate_expression.ts";
 import { correctDigits, reference } from "../reference/reference.ts";
+
+/** A rate constant at a temperature and [M]. */
+function rateConstantOf(
+  expression: RateExpression,
+  { temperature, thirdBody }: { temperature: number; thirdBody?: number },
+  others?: (symbol: string) => RateFunction,
+): number {
+  return rateFunctionOf(expression, others)(temperature, thirdBody);
+}
 
 describe("Arrhenius", () => {
   test("A published modified Arrhenius expression: k(298 K) of OH + n-pentane", () => {
@@ -100,7 +113,7 @@ describe("fall-off", () => {
 });
 
 describe("reverse constants", () => {
-  const symbols = (symbol: string) => ({ k1: 6 } as Record<string, number>)[symbol];
+  const symbols = (symbol: string) => rateFunctionOf(({ k1: 6 } as Record<string, number>)[symbol]);
 
   test("from an equilibrium constant", () => {
     const k = rateConstantOf(
