@@ -6,6 +6,8 @@ export interface IntegrationPlan {
   readonly times: Float64Array;
   /** Called with each output in turn; the array is overwritten afterwards. */
   readonly output: (index: number, y: Float64Array) => void;
+  /** Whether no step may reach beyond the last output. */
+  readonly endsAtLast?: boolean;
   /** Most steps to take. */
   readonly maxSteps: number;
   /** Stops the integration when aborted. */
@@ -56,7 +58,7 @@ export function integrate(integrator: Integrator, plan: IntegrationPlan): Integr
     const alone = integrator.endsOnOutputs &&
       (next + 1 === count || times[next + 1] > times[next] + h);
     const near = times[next] <= integrator.t + 2 * h;
-    const last = integrator.endsOnOutputs ? times[count - 1] : Infinity;
+    const last = integrator.endsOnOutputs || plan.endsAtLast ? times[count - 1] : Infinity;
     const failure = integrator.advance(alone && near ? times[next] : last);
     if (failure) {
       return {
@@ -82,10 +84,11 @@ export function integrate(integrator: Integrator, plan: IntegrationPlan): Integr
 
 /** As {@link integrate}, starting anew at each time where the coefficients bend, so that no step reaches across.
  *
- * @param bends times, s, ascending */
+ * @param bends times, s, ascending @param stepAt size of the first step after a bend, s */
 export function integrateInParts(
   integrator: Integrator,
   bends: readonly number[],
+  stepAt: (time: number, y: Float64Array) => number,
   plan: IntegrationPlan,
 ): IntegrationEnd {
   const { times, output } = plan;
@@ -101,6 +104,7 @@ export function integrateInParts(
     const end = integrate(integrator, {
       ...plan,
       times: part,
+      endsAtLast: true,
       maxSteps: plan.maxSteps - steps,
       output: (i, y) => {
         if (i < own.length) output(done + i, y);
@@ -109,7 +113,8 @@ export function integrateInParts(
     if (!end.finished) return { ...end, outputs: done + Math.min(end.outputs, own.length) };
     done += own.length;
     steps = integrator.counts.accepted;
-    integrator.start(bend, integrator.y.slice(), integrator.stepSize);
+    const y = integrator.y.slice();
+    integrator.start(bend, y, stepAt(bend, y));
   }
   const from = done;
   const end = integrate(integrator, {

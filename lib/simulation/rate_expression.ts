@@ -98,13 +98,14 @@ export function rateFunctionOf(
   );
 }
 
-/** Whether a rate constant depends on temperature. */
+/** Whether a rate constant depends on temperature of itself; a reverse one also by its forward one. */
 export function dependsOnTemperature(expression: RateExpression): boolean {
   if (typeof expression === "number") return false;
   if ("lowPressure" in expression) {
     return dependsOnTemperature(expression.lowPressure) ||
       dependsOnTemperature(expression.highPressure);
   }
+  if ("forward" in expression) return typeof expression.equilibriumConstant !== "number";
   return true;
 }
 

@@ -101,14 +101,15 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
   const atol = absoluteTolerances(mechanism, compiled.place, given.atol, rtol, initial);
   const kernel = compiled.makeKernel();
   const integrator = chooseIntegrator(given.method, kernel, coefficients, rtol, atol);
-  const reach = times.find((t) => t > startTime);
-  integrator.start(
-    startTime,
-    initial,
-    reach === undefined ? 0 : firstStep(kernel, initial, coefficients.k, reach - startTime, rtol),
-  );
+  const stepAt = (time: number, y: Float64Array): number => {
+    const reach = times.find((t) => t > time);
+    if (reach === undefined) return 0;
+    coefficients.at?.(time);
+    return firstStep(kernel, y, coefficients.k, reach - time, rtol);
+  };
+  integrator.start(startTime, initial, stepAt(startTime, initial));
   const states: Float64Array[] = [];
-  const end = integrateInParts(integrator, programme.bends, {
+  const end = integrateInParts(integrator, programme.bends, stepAt, {
     times,
     output: (_, y) => states.push(y.slice()),
     maxSteps: given.maxSteps ?? 100_000,

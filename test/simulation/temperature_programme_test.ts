@@ -6,7 +6,7 @@ import { temperatureProgramme } from "../../lib/simulation/temperature_programme
 
 const DECAY = parseMechanism("A ->[k] B");
 const ENERGY = 80_000;
-const FACTOR = 1e11;
+const FACTOR = 5e8;
 const k = (T: number) => FACTOR * Math.exp(-ENERGY / (GAS_CONSTANT * T));
 const EXPRESSION = { preExponentialFactor: FACTOR, activationEnergy: ENERGY / 1000 };
 
