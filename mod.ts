@@ -109,6 +109,27 @@ export { MechanismSyntaxError } from "./lib/mechanism/mechanism_syntax_error.ts"
 export type { NotationFault } from "./lib/mechanism/mechanism_syntax_error.ts";
 export type { ElementaryStep, Participant } from "./lib/mechanism/elementary_step.ts";
 
+// Simulation
+export { simulate } from "./lib/simulation/simulate.ts";
+export type { SimulateOptions } from "./lib/simulation/simulate.ts";
+export { Trajectory } from "./lib/simulation/trajectory.ts";
+export type { ConservedQuantity, SimulationStatistics } from "./lib/simulation/trajectory.ts";
+export type { MethodName } from "./lib/simulation/choose_integrator.ts";
+export type { IntegratorCounts } from "./lib/simulation/integrator.ts";
+export type {
+  ArrheniusExpression,
+  Broadening,
+  EyringExpression,
+  FallOffExpression,
+  RateExpression,
+  ReverseExpression,
+} from "./lib/simulation/rate_expression.ts";
+export type { TemperatureTable } from "./lib/simulation/temperature_programme.ts";
+export { simulateStochastic } from "./lib/simulation/simulate_stochastic.ts";
+export type { SimulateStochasticOptions } from "./lib/simulation/simulate_stochastic.ts";
+export { StochasticTrajectory } from "./lib/simulation/stochastic_trajectory.ts";
+export type { StochasticTrajectoryParts } from "./lib/simulation/stochastic_trajectory.ts";
+
 // Figures
 export { Figure } from "./lib/figure/figure.ts";
 export { plotRuns } from "./lib/figure/plot_runs.ts";
@@ -117,6 +138,9 @@ export { plotLinearizations } from "./lib/figure/plot_linearizations.ts";
 export { plotResiduals } from "./lib/figure/plot_residuals.ts";
 export { plotArrhenius } from "./lib/figure/plot_arrhenius.ts";
 export type { PlotArrheniusOptions } from "./lib/figure/plot_arrhenius.ts";
+
+export { plotTrajectory } from "./lib/figure/plot_trajectory.ts";
+export type { PlotTrajectoryOptions } from "./lib/figure/plot_trajectory.ts";
 
 // Reports
 export { NotebookCellError, runNotebook } from "./lib/report/run_notebook.ts";

@@ -30,16 +30,25 @@ export interface ConservedQuantity {
 
 /** What a {@link Trajectory} is made from. */
 export interface TrajectoryParts {
+  /** The steps. */
   readonly mechanism: Mechanism;
+  /** Their compiled form. */
   readonly compiled: CompiledNetwork;
+  /** Output times reached, s. */
   readonly times: Float64Array;
   /** One row of concentrations an output time, kernel's numbering. */
   readonly states: readonly Float64Array[];
+  /** Concentrations at the start, kernel's numbering. */
   readonly initial: Float64Array;
+  /** Rate coefficients of the reactions. */
   readonly rateCoefficients: RateCoefficients;
+  /** What the integration took. */
   readonly statistics: SimulationStatistics;
+  /** Whether every output time was reached. */
   readonly finished: boolean;
+  /** Why it ended. */
   readonly reason: string;
+  /** Time reached, s. */
   readonly timeReached: number;
 }
 
@@ -50,7 +59,8 @@ const MOST_SPECIES = 8;
 
 /** Concentrations of every species at the output times that were reached. */
 export class Trajectory extends Result {
-  readonly kind = "trajectory";
+  /** Kind of result. */
+  override readonly kind: string = "trajectory";
   /** The steps that were followed. */
   readonly mechanism: Mechanism;
   /** Output times reached, s. */
@@ -63,11 +73,15 @@ export class Trajectory extends Result {
   readonly timeReached: number;
   /** What the integration took. */
   readonly statistics: SimulationStatistics;
-  readonly cautions: readonly Caution[];
+  /** What the reader must know: that the integration did not finish. */
+  override readonly cautions: readonly Caution[];
   readonly #parts: TrajectoryParts;
   #conserved: readonly ConservedQuantity[] | undefined;
 
-  /** @param parts what the integration left */
+  /** A trajectory from its parts; `simulate` makes it.
+   *
+   * @internal
+   * @param parts what the integration left */
   constructor(parts: TrajectoryParts) {
     super();
     this.#parts = parts;
@@ -157,7 +171,8 @@ export class Trajectory extends Result {
     });
   }
 
-  get title(): string {
+  /** First line of every view. */
+  override get title(): string {
     const { species, steps } = this.mechanism;
     return `${
       this.finished ? "Trajectory" : "UNFINISHED trajectory"
@@ -165,11 +180,13 @@ export class Trajectory extends Result {
       `${steps.length} steps, to ${Number(this.timeReached.toPrecision(4))} s`;
   }
 
+  /** Keys of the headline values. */
   protected override headlineKeys(): readonly string[] {
     return ["finished", "timeReached"];
   }
 
-  sections(): readonly Section[] {
+  /** The content, in reading order. */
+  override sections(): readonly Section[] {
     const { method, generatedCode, accepted, rejected, jacobians, factorizations } =
       this.statistics;
     const shown = this.mechanism.species.slice(0, MOST_SPECIES);
