@@ -9,6 +9,7 @@ import {
 } from "./integrator.ts";
 import type { Kernel } from "./kernel.ts";
 import type { RateCoefficients } from "./rate_coefficients.ts";
+import type { SensitivityDifferences } from "./sensitivity_differences.ts";
 
 /** Most Newton iterations of a step. */
 const MOST_ITERATIONS = 4;
@@ -40,6 +41,8 @@ export class BackwardDifferentiation implements Integrator {
   tBefore = 0;
   stepSize = 0;
   readonly y: Float64Array;
+  /** Sensitivities that are carried along. */
+  readonly #sensitivities: SensitivityDifferences | undefined;
   readonly #kernel: Kernel;
   readonly #coefficients: RateCoefficients;
   readonly #rtol: number;
@@ -67,14 +70,22 @@ export class BackwardDifferentiation implements Integrator {
   /** @param kernel the network's numbers
    * @param coefficients rate coefficients
    * @param rtol relative tolerance
-   * @param atol absolute tolerance of each species, mol/L */
-  constructor(kernel: Kernel, coefficients: RateCoefficients, rtol: number, atol: Float64Array) {
+   * @param atol absolute tolerance of each species, mol/L
+   * @param sensitivities carried along, without part in the choice of steps */
+  constructor(
+    kernel: Kernel,
+    coefficients: RateCoefficients,
+    rtol: number,
+    atol: Float64Array,
+    sensitivities?: SensitivityDifferences,
+  ) {
     const n = kernel.size;
     const vector = () => new Float64Array(n);
     this.#kernel = kernel;
     this.#coefficients = coefficients;
     this.#rtol = rtol;
     this.#atol = atol;
+    this.#sensitivities = sensitivities;
     this.y = vector();
     this.#differences = Array.from({ length: MOST_ORDER + 3 }, vector);
     this.#predicted = vector();
@@ -100,6 +111,10 @@ export class BackwardDifferentiation implements Integrator {
     this.counts.rightSides++;
     const slope = this.#differences[1];
     for (let i = 0; i < slope.length; i++) slope[i] *= stepSize;
+    if (this.#sensitivities) {
+      this.#kernel.linearize(this.y, this.#coefficients.k);
+      this.#sensitivities.start(t, this.y, stepSize);
+    }
   }
 
   advance(limit: number): StepFailure | undefined {
@@ -154,11 +169,24 @@ export class BackwardDifferentiation implements Integrator {
       this.y.set(this.#trial);
       this.#jacobianAge++;
       this.#jacobianFresh = false;
+      if (this.#sensitivities) {
+        // the linear systems of the sensitivities need the Jacobian where the step ends
+        this.#predicted.set(this.y);
+        if (!this.#refactor(tNew, c, true)) {
+          return { what: "the equations of the sensitivities are singular", species: -1 };
+        }
+        this.#sensitivities.step(tNew, this.y, this.#order, c);
+      }
       this.#update();
       if (++this.#equalSteps > this.#order) this.#choose(norm);
       this.stepSize = this.#h;
       return undefined;
     }
+  }
+
+  /** Sensitivities at a time within the last step, all parameters behind one another. */
+  interpolateSensitivities(t: number, out: Float64Array): void {
+    this.#sensitivities?.interpolate(t === this.t ? 0 : (this.t - t) / this.#h, this.#order, out);
   }
 
   interpolate(t: number, out: Float64Array): void {
@@ -316,6 +344,7 @@ export class BackwardDifferentiation implements Integrator {
       }
     }
     for (let j = 1; j < m; j++) differences[j].set(scratch[j]);
+    this.#sensitivities?.rescale(this.#order, matrix);
     this.#h *= factor;
     this.#equalSteps = 0;
   }

@@ -11,12 +11,14 @@ import {
 } from "../quantity/options.ts";
 import type { Quantity } from "../quantity/read_quantity.ts";
 import { Mechanism } from "../mechanism/mechanism.ts";
-import { compiledNetwork } from "./compiled_network.ts";
+import { type CompiledNetwork, compiledNetwork } from "./compiled_network.ts";
+import type { Integrator } from "./integrator.ts";
+import type { Kernel } from "./kernel.ts";
 import { firstStep } from "./first_step.ts";
 import { integrateInParts, type IntegrationEnd } from "./integrate.ts";
 import { chooseIntegrator, type MethodName } from "./choose_integrator.ts";
 import { initialState, rateFunctionsOf } from "./initial_conditions.ts";
-import { followTemperature } from "./rate_coefficients.ts";
+import { followTemperature, type RateCoefficients } from "./rate_coefficients.ts";
 import { dependsOnTemperature, type RateExpression } from "./rate_expression.ts";
 import {
   type TemperatureProgramme,
@@ -84,6 +86,29 @@ export interface SimulateOptions {
  * ok(Math.abs(trajectory.concentration("B")[1] - exact) < 1e-5);
  * ``` */
 export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajectory {
+  return simulateWith(mechanism, options, undefined);
+}
+
+/** What is followed along with the concentrations. */
+export interface Companion {
+  /** Makes the integrator. */
+  integrator(
+    compiled: CompiledNetwork,
+    kernel: Kernel,
+    coefficients: RateCoefficients,
+    rtol: number,
+    atol: Float64Array,
+  ): Integrator;
+  /** Called after each output with its time, s. */
+  output(time: number): void;
+}
+
+/** As {@link simulate}, with an integrator of the caller's that follows more than concentrations. */
+export function simulateWith(
+  mechanism: Mechanism,
+  options: SimulateOptions,
+  companion: Companion | undefined,
+): Trajectory {
   if (!(mechanism instanceof Mechanism)) {
     throw new TypeError(
       `Cannot simulate ${String(mechanism)}: expected a mechanism, as from parseMechanism`,
@@ -100,7 +125,8 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
   const initial = initialState(mechanism, compiled, given.initial);
   const atol = absoluteTolerances(mechanism, compiled.place, given.atol, rtol, initial);
   const kernel = compiled.makeKernel();
-  const integrator = chooseIntegrator(given.method, kernel, coefficients, rtol, atol);
+  const integrator = companion?.integrator(compiled, kernel, coefficients, rtol, atol) ??
+    chooseIntegrator(given.method, kernel, coefficients, rtol, atol);
   const stepAt = (time: number, y: Float64Array): number => {
     const reach = times.find((t) => t > time);
     if (reach === undefined) return 0;
@@ -111,7 +137,10 @@ export function simulate(mechanism: Mechanism, options: SimulateOptions): Trajec
   const states: Float64Array[] = [];
   const end = integrateInParts(integrator, programme.bends, stepAt, {
     times,
-    output: (_, y) => states.push(y.slice()),
+    output: (index, y) => {
+      states.push(y.slice());
+      companion?.output(times[index]);
+    },
     maxSteps: given.maxSteps ?? 100_000,
     signal: given.signal,
     progress: given.progress,

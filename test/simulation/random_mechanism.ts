@@ -1,5 +1,5 @@
 import fc from "fast-check";
-import { Mechanism } from "../../lib/mechanism/mechanism.ts";
+import type { Mechanism } from "../../lib/mechanism/mechanism.ts";
 import { parseMechanism } from "../../lib/mechanism/parse_mechanism.ts";
 
 /** A random mechanism whose steps all conserve a positive mass, with its constants. */
