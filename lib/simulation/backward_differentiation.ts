@@ -9,7 +9,7 @@ import {
 } from "./integrator.ts";
 import type { Kernel } from "./kernel.ts";
 import type { RateCoefficients } from "./rate_coefficients.ts";
-import type { SensitivityDifferences } from "./sensitivity_differences.ts";
+import type { SensitivityHistory } from "./sensitivity_history.ts";
 
 /** Most Newton iterations of a step. */
 const MOST_ITERATIONS = 4;
@@ -42,7 +42,7 @@ export class BackwardDifferentiation implements Integrator {
   stepSize = 0;
   readonly y: Float64Array;
   /** Sensitivities that are carried along. */
-  readonly #sensitivities: SensitivityDifferences | undefined;
+  readonly #sensitivities: SensitivityHistory | undefined;
   readonly #kernel: Kernel;
   readonly #coefficients: RateCoefficients;
   readonly #rtol: number;
@@ -77,7 +77,7 @@ export class BackwardDifferentiation implements Integrator {
     coefficients: RateCoefficients,
     rtol: number,
     atol: Float64Array,
-    sensitivities?: SensitivityDifferences,
+    sensitivities?: SensitivityHistory,
   ) {
     const n = kernel.size;
     const vector = () => new Float64Array(n);
@@ -344,7 +344,7 @@ export class BackwardDifferentiation implements Integrator {
       }
     }
     for (let j = 1; j < m; j++) differences[j].set(scratch[j]);
-    this.#sensitivities?.rescale(this.#order, matrix);
+    this.#sensitivities?.rescale(this.#order, factor);
     this.#h *= factor;
     this.#equalSteps = 0;
   }

@@ -1,7 +1,7 @@
 import type { Mechanism } from "../mechanism/mechanism.ts";
 import { BackwardDifferentiation } from "./backward_differentiation.ts";
 import type { CompiledNetwork } from "./compiled_network.ts";
-import { type Parameter, SensitivityDifferences } from "./sensitivity_differences.ts";
+import { type Parameter, SensitivityHistory } from "./sensitivity_history.ts";
 import { type SimulateOptions, simulateWith } from "./simulate.ts";
 import type { Trajectory } from "./trajectory.ts";
 
@@ -78,7 +78,7 @@ export class Sensitivities {
  *
  * dS/dt = J S + ∂f/∂p, S = ∂y/∂p
  *
- * Source: see {@link SensitivityDifferences}; R. P. Dickinson and R. J. Gelinas, J. Comput. Phys. 21
+ * Source: see {@link SensitivityHistory}; R. P. Dickinson and R. J. Gelinas, J. Comput. Phys. 21
  * (1976) 123, for the equations.
  * @param mechanism the steps
  * @param options as of simulate, with the parameters to vary
@@ -116,7 +116,7 @@ export function simulateSensitivities(
         sizes.push(size);
         return parameter;
       });
-      const sensitivities = new SensitivityDifferences(
+      const sensitivities = new SensitivityHistory(
         kernel,
         compiled.network.reactions,
         parameters,
