@@ -1,4 +1,5 @@
 import { ALPHA, ERROR, GAMMA, MOST_ORDER, rescaling } from "./bdf_coefficients.ts";
+import { close, totalOf } from "./closing_sums.ts";
 import {
   type Integrator,
   type IntegratorCounts,
@@ -44,6 +45,8 @@ export class BackwardDifferentiation implements Integrator {
   /** Sensitivities that are carried along. */
   readonly #sensitivities: SensitivityHistory | undefined;
   readonly #kernel: Kernel;
+  readonly #totals: Float64Array;
+  readonly #zeros: Float64Array;
   readonly #coefficients: RateCoefficients;
   readonly #rtol: number;
   readonly #atol: Float64Array;
@@ -82,6 +85,8 @@ export class BackwardDifferentiation implements Integrator {
     const n = kernel.size;
     const vector = () => new Float64Array(n);
     this.#kernel = kernel;
+    this.#totals = new Float64Array(kernel.sums.length);
+    this.#zeros = new Float64Array(kernel.sums.length);
     this.#coefficients = coefficients;
     this.#rtol = rtol;
     this.#atol = atol;
@@ -106,11 +111,13 @@ export class BackwardDifferentiation implements Integrator {
     this.#rate = 1;
     for (const difference of this.#differences) difference.fill(0);
     this.#differences[0].set(y);
+    this.#kernel.sums.forEach((sum, s) => this.#totals[s] = totalOf(sum, y));
     this.#coefficients.at?.(t);
     this.#kernel.rightSide(this.y, this.#coefficients.k, this.#differences[1]);
     this.counts.rightSides++;
     const slope = this.#differences[1];
     for (let i = 0; i < slope.length; i++) slope[i] *= stepSize;
+    if (this.#kernel.sums.length > 0) this.#close();
     if (this.#sensitivities) {
       this.#kernel.linearize(this.y, this.#coefficients.k);
       this.#sensitivities.start(t, this.y, stepSize);
@@ -178,6 +185,10 @@ export class BackwardDifferentiation implements Integrator {
         this.#sensitivities.step(tNew, this.y, this.#order, c);
       }
       this.#update();
+      if (this.#kernel.sums.length > 0) {
+        this.#close();
+        this.y.set(this.#differences[0]);
+      }
       if (++this.#equalSteps > this.#order) this.#choose(norm);
       this.stepSize = this.#h;
       return undefined;
@@ -200,6 +211,14 @@ export class BackwardDifferentiation implements Integrator {
       const difference = differences[j];
       for (let i = 0; i < out.length; i++) out[i] += product * difference[i];
     }
+  }
+
+  /** Conserved sums make the closing species of the state and, being 0, of its differences. */
+  #close(): void {
+    const { sums } = this.#kernel;
+    const differences = this.#differences;
+    close(sums, this.#totals, differences[0]);
+    for (let j = 1; j < differences.length; j++) close(sums, this.#zeros, differences[j]);
   }
 
   #predict(): void {

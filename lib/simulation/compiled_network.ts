@@ -1,4 +1,5 @@
 import type { Mechanism } from "../mechanism/mechanism.ts";
+import { canClose, type ClosingSum, closingSums, renumberSums } from "./closing_sums.ts";
 import { eliminationOrder } from "./elimination_order.ts";
 import { canCompile } from "./generated_code/compile.ts";
 import { generateKernel } from "./generated_code/generate_kernel.ts";
@@ -31,14 +32,16 @@ export class CompiledNetwork {
   readonly products: number;
   #generate: (() => Kernel) | undefined;
 
-  /** @param mechanism the steps */
-  constructor(mechanism: Mechanism) {
+  /** @param mechanism the steps
+   * @param closing whether conserved sums make their closing species */
+  constructor(mechanism: Mechanism, closing = false) {
     const { network, origins } = networkOf(mechanism);
-    const order = eliminationOrder(network);
+    const sums = closing ? closingSums(network) : [];
+    const order = eliminationOrder(network, sums);
     this.place = new Int32Array(order.length);
     order.forEach((species, at) => this.place[species] = at);
     this.network = renumber(network, this.place);
-    this.structure = jacobianStructure(this.network);
+    this.structure = jacobianStructure(this.network, renumberSums(sums, this.place));
     this.origins = origins;
     const { rowStart, column, diagonal } = this.structure;
     let products = 0;
@@ -67,10 +70,33 @@ export class CompiledNetwork {
 }
 
 const compiled = new WeakMap<Mechanism, CompiledNetwork>();
+const compiledClosing = new WeakMap<Mechanism, CompiledNetwork>();
+const sumsOf = new WeakMap<Mechanism, readonly ClosingSum[]>();
 
 /** The compiled form of a mechanism, made at the first call and kept as long as the mechanism. */
 export function compiledNetwork(mechanism: Mechanism): CompiledNetwork {
-  let network = compiled.get(mechanism);
-  if (!network) compiled.set(mechanism, network = new CompiledNetwork(mechanism));
-  return network;
+  return kept(compiled, mechanism, () => new CompiledNetwork(mechanism));
+}
+
+/** Most species for which conserved sums are looked for: beyond, finding them takes too long. */
+const MOST_CLOSING_SPECIES = 60;
+
+/** The compiled form for given concentrations at the start: where they allow it, conserved sums make
+ * their closing species. */
+export function compiledFor(
+  mechanism: Mechanism,
+  initial: Readonly<Record<string, number>>,
+): CompiledNetwork {
+  if (mechanism.species.length > MOST_CLOSING_SPECIES) return compiledNetwork(mechanism);
+  const sums = kept(sumsOf, mechanism, () => closingSums(networkOf(mechanism).network));
+  const y = Float64Array.from(mechanism.species, (name) => initial[name] ?? 0);
+  return sums.length === 0 || !canClose(sums, y)
+    ? compiledNetwork(mechanism)
+    : kept(compiledClosing, mechanism, () => new CompiledNetwork(mechanism, true));
+}
+
+function kept<T>(store: WeakMap<Mechanism, T>, mechanism: Mechanism, make: () => T): T {
+  let value = store.get(mechanism);
+  if (value === undefined) store.set(mechanism, value = make());
+  return value;
 }

@@ -1,3 +1,4 @@
+import type { ClosingSum } from "./closing_sums.ts";
 import type { ReactionNetwork } from "./reaction_network.ts";
 
 /** Order in which the species are eliminated, so that few entries fill in: at each stage the diagonal
@@ -5,8 +6,12 @@ import type { ReactionNetwork } from "./reaction_network.ts";
  * column. Rows and columns are kept as bit sets.
  *
  * Source: H. M. Markowitz, Management Sci. 3 (1957) 255.
+ * @param sums conserved sums that stand for the equations of their closing species, which come last
  * @returns for each place the species that stands there */
-export function eliminationOrder(network: ReactionNetwork): Int32Array {
+export function eliminationOrder(
+  network: ReactionNetwork,
+  sums: readonly ClosingSum[] = [],
+): Int32Array {
   const n = network.size;
   const words = (n + 31) >>> 5;
   const rows = new Uint32Array(n * words);
@@ -23,6 +28,14 @@ export function eliminationOrder(network: ReactionNetwork): Int32Array {
       }
     }
   }
+  const late = new Uint8Array(n);
+  for (const { closing, species } of sums) {
+    late[closing] = 1;
+    for (const j of species) {
+      rows[closing * words + (j >>> 5)] |= 1 << (j & 31);
+      columns[j * words + (closing >>> 5)] |= 1 << (closing & 31);
+    }
+  }
   const rowCount = new Int32Array(n);
   const columnCount = new Int32Array(n);
   for (let i = 0; i < n; i++) {
@@ -36,7 +49,7 @@ export function eliminationOrder(network: ReactionNetwork): Int32Array {
     let least = Infinity;
     for (let q = 0; q < n - stage; q++) {
       const i = left[q];
-      const product = (rowCount[i] - 1) * (columnCount[i] - 1);
+      const product = (rowCount[i] - 1) * (columnCount[i] - 1) + late[i] * 1e12;
       if (product < least || product === least && i < left[best]) {
         least = product;
         best = q;

@@ -1,3 +1,4 @@
+import type { ClosingSum } from "./closing_sums.ts";
 import type { JacobianStructure } from "./jacobian_structure.ts";
 import type { Kernel } from "./kernel.ts";
 import type { ReactionNetwork } from "./reaction_network.ts";
@@ -9,6 +10,7 @@ export class InterpretedKernel implements Kernel {
   readonly size: number;
   readonly reactionCount: number;
   readonly generated = false;
+  readonly sums: readonly ClosingSum[];
   readonly #structure: JacobianStructure;
   readonly #factors: SparseFactors;
   readonly #jacobian: Float64Array;
@@ -29,6 +31,7 @@ export class InterpretedKernel implements Kernel {
     const m = network.reactions.length;
     this.size = n;
     this.reactionCount = m;
+    this.sums = structure.sums;
     this.#structure = structure;
     this.#factors = new SparseFactors(structure);
     this.#jacobian = new Float64Array(structure.jacobianColumn.length);
@@ -123,7 +126,7 @@ export class InterpretedKernel implements Kernel {
     const slope = this.#slope;
     this.rightSide(u, k, slope);
     for (let i = 0; i < this.size; i++) x[i] = slope[i] + x[i];
-    this.#factors.solve(x);
+    this.#factors.solveChange(x);
   }
 
   /** Entries of J of the last {@link linearize}, dense and row-major, for tests. */

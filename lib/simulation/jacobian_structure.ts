@@ -1,3 +1,4 @@
+import type { ClosingSum } from "./closing_sums.ts";
 import type { ReactionNetwork } from "./reaction_network.ts";
 
 /** Where the entries of J = ∂f/∂y and of the factors of I/(hγ) − J stand, rows in order, and which
@@ -11,7 +12,7 @@ export interface JacobianStructure {
   readonly column: Int32Array;
   /** Where the diagonal of each row is. */
   readonly diagonal: Int32Array;
-  /** Where each entry of J is among the factors. */
+  /** Where each entry of J is among the factors; −1 in the row of a closing species. */
   readonly place: Int32Array;
   /** Row i of J is at jacobianStart[i] … jacobianStart[i + 1] − 1. */
   readonly jacobianStart: Int32Array;
@@ -29,14 +30,22 @@ export interface JacobianStructure {
   readonly target: Int32Array;
   /** With which factor. */
   readonly targetFactor: Float64Array;
+  /** Conserved sums that stand for the equations of their closing species. */
+  readonly sums: readonly ClosingSum[];
+  /** Index of the sum in whose row each species is the closing one; −1 for all others. */
+  readonly sumOf: Int32Array;
 }
 
 /** Symbolic factorization: once for a mechanism, whatever its rate constants.
  *
  * Source: row-wise elimination, T. A. Davis, Direct methods for sparse linear systems, SIAM 2006,
  * ch. 6.
- * @param network species numbered in elimination order */
-export function jacobianStructure(network: ReactionNetwork): JacobianStructure {
+ * @param network species numbered in elimination order
+ * @param sums conserved sums that stand for the equations of their closing species */
+export function jacobianStructure(
+  network: ReactionNetwork,
+  sums: readonly ClosingSum[] = [],
+): JacobianStructure {
   const n = network.size;
   const partialReaction: number[] = [];
   const partialSpecies: number[] = [];
@@ -68,7 +77,11 @@ export function jacobianStructure(network: ReactionNetwork): JacobianStructure {
   const jacobianColumn = new Int32Array(jacobianStart[n]);
   sorted.forEach((columns, i) => jacobianColumn.set(columns, jacobianStart[i]));
 
-  const factors = factorPattern(sorted);
+  const sumOf = new Int32Array(n).fill(-1);
+  sums.forEach(({ closing }, s) => sumOf[closing] = s);
+  const factors = factorPattern(
+    sorted.map((columns, i) => sumOf[i] < 0 ? columns : Int32Array.from(sums[sumOf[i]].species)),
+  );
   const place = new Int32Array(jacobianColumn.length);
   const slot = new Int32Array(n);
   const target = new Int32Array(targetRow.length);
@@ -76,7 +89,7 @@ export function jacobianStructure(network: ReactionNetwork): JacobianStructure {
   for (let i = 0; i < n; i++) {
     for (let p = factors.rowStart[i]; p < factors.rowStart[i + 1]; p++) slot[factors.column[p]] = p;
     for (let q = jacobianStart[i]; q < jacobianStart[i + 1]; q++) {
-      place[q] = slot[jacobianColumn[q]];
+      place[q] = sumOf[i] < 0 ? slot[jacobianColumn[q]] : -1;
       entryAt.set(i * n + jacobianColumn[q], q);
     }
   }
@@ -97,6 +110,8 @@ export function jacobianStructure(network: ReactionNetwork): JacobianStructure {
     targetStart: Int32Array.from(targetStart),
     target,
     targetFactor: Float64Array.from(targetFactor),
+    sums,
+    sumOf,
   };
 }
 

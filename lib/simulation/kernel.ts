@@ -1,3 +1,5 @@
+import type { ClosingSum } from "./closing_sums.ts";
+
 /** The numbers of a network, as an integrator asks for them: f = dy/dt, the Jacobian J = ∂f/∂y, and
  * systems with I/(hγ) − J. Species are numbered in the kernel's own order. Nothing is allocated after
  * the kernel is made; a kernel holds one Jacobian and one factorization. */
@@ -20,6 +22,9 @@ export interface Kernel {
   factor(d: number): boolean;
   /** Solves (d I − J) x = b with the last factors, b in `x` on entry. */
   solve(x: Float64Array): void;
-  /** Solves (d I − J) x = f(u) + b with the last factors, b in `x` on entry: one stage. */
+  /** Conserved sums that make their closing species. */
+  readonly sums: readonly ClosingSum[];
+  /** Solves (d I − J) x = f(u) + b with the last factors, b in `x` on entry: one stage. The conserved
+   * sums of b must be 0, as they are where b is made of changes of the state. */
   solveStage(u: Float64Array, k: Float64Array, x: Float64Array): void;
 }

@@ -1,3 +1,4 @@
+import { close, type ClosingSum, totalOf } from "./closing_sums.ts";
 import {
   type Integrator,
   type IntegratorCounts,
@@ -32,6 +33,8 @@ export class Rosenbrock implements Integrator {
   stepSize = 0;
   readonly #solver: StageSolver;
   readonly #controller = new StepController(RODAS5P.embeddedOrder);
+  readonly #sums: readonly ClosingSum[];
+  readonly #totals: Float64Array;
   readonly #rtol: number;
   readonly #atol: Float64Array;
   readonly #dense: readonly Float64Array[];
@@ -43,6 +46,8 @@ export class Rosenbrock implements Integrator {
    * @param atol absolute tolerance of each species, mol/L */
   constructor(kernel: Kernel, coefficients: RateCoefficients, rtol: number, atol: Float64Array) {
     this.#solver = new StageSolver(kernel, RODAS5P, coefficients);
+    this.#sums = kernel.sums;
+    this.#totals = new Float64Array(kernel.sums.length);
     this.#rtol = rtol;
     this.#atol = atol;
     this.#dense = RODAS5P.dense.map(() => new Float64Array(kernel.size));
@@ -56,6 +61,7 @@ export class Rosenbrock implements Integrator {
     this.t = this.tBefore = t;
     this.stepSize = stepSize;
     this.#solver.next.set(y);
+    this.#sums.forEach((sum, s) => this.#totals[s] = totalOf(sum, y));
     this.#controller.restart();
   }
 
@@ -87,6 +93,7 @@ export class Rosenbrock implements Integrator {
       const norm = solved ? scaledError(error, y, next, this.#rtol, this.#atol) : NaN;
       if (norm <= 1) {
         counts.accepted++;
+        if (this.#sums.length > 0) close(this.#sums, this.#totals, next);
         this.tBefore = t;
         this.t = reaches ? limit : t + h;
         // a step cut short by the limit says little about how far the next may go

@@ -11,7 +11,7 @@ import {
 } from "../quantity/options.ts";
 import type { Quantity } from "../quantity/read_quantity.ts";
 import { Mechanism } from "../mechanism/mechanism.ts";
-import { type CompiledNetwork, compiledNetwork } from "./compiled_network.ts";
+import { compiledFor, type CompiledNetwork } from "./compiled_network.ts";
 import type { Integrator } from "./integrator.ts";
 import type { Kernel } from "./kernel.ts";
 import { firstStep } from "./first_step.ts";
@@ -115,7 +115,7 @@ export function simulateWith(
     );
   }
   const given = readOptions("simulate", options, READERS);
-  const compiled = compiledNetwork(mechanism);
+  const compiled = compiledFor(mechanism, given.initial ?? {});
   const startTime = given.startTime ?? 0;
   const times = outputTimes(given.times, startTime);
   const rtol = given.rtol ?? 1e-6;

@@ -13,6 +13,7 @@ export class SparseFactors {
   readonly #values: Float64Array;
   readonly #pivots: Float64Array;
   readonly #row: Float64Array;
+  #d = 1;
   /** Where the upper part of each row begins. */
   readonly #upperStart: Int32Array;
   /** For each entry of L, how many entries from it on (1, 2 or 4) belong to rows of one pattern. */
@@ -30,20 +31,28 @@ export class SparseFactors {
 
   /** Factors d I − J; false where a pivot is 0 or not finite. */
   factor(d: number, jacobian: Float64Array): boolean {
-    const { size, rowStart, column, diagonal, jacobianStart, jacobianColumn } = this.#structure;
+    const { size, rowStart, column, diagonal, jacobianStart, jacobianColumn, sums, sumOf } =
+      this.#structure;
+    this.#d = d;
     const values = this.#values;
     const pivots = this.#pivots;
     const upperStart = this.#upperStart;
     const together = this.#together;
     const row = this.#row;
-    let q = 0;
     for (let i = 0; i < size; i++) {
       const begin = rowStart[i];
       const middle = diagonal[i];
       const end = rowStart[i + 1];
       for (let p = begin; p < end; p++) row[column[p]] = 0;
-      for (const stop = jacobianStart[i + 1]; q < stop; q++) row[jacobianColumn[q]] = -jacobian[q];
-      row[i] += d;
+      if (sumOf[i] < 0) {
+        const stop = jacobianStart[i + 1];
+        for (let q = jacobianStart[i]; q < stop; q++) row[jacobianColumn[q]] = -jacobian[q];
+        row[i] += d;
+      } else {
+        const { species, weights } = sums[sumOf[i]];
+        for (let s = 0; s < species.length; s++) row[species[s]] = -weights[s];
+        row[i] = 1;
+      }
       for (let p = begin; p < middle;) {
         const k = column[p];
         const count = together[p];
@@ -98,9 +107,25 @@ export class SparseFactors {
     return true;
   }
 
-  /** Solves L U x = b, b in `x` on entry. Long rows are summed in four parts, so that additions need
-   * not wait for one another. */
+  /** Solves (d I − J) x = b, b in `x` on entry; a conserved sum of b gives that of x. */
   solve(x: Float64Array): void {
+    for (const { closing, species, weights } of this.#structure.sums) {
+      let sum = x[closing];
+      for (let q = 0; q < species.length; q++) sum -= weights[q] * x[species[q]];
+      x[closing] = sum / this.#d;
+    }
+    this.#substitute(x);
+  }
+
+  /** As {@link solve}, for a right side whose conserved sums are 0. */
+  solveChange(x: Float64Array): void {
+    for (const { closing } of this.#structure.sums) x[closing] = 0;
+    this.#substitute(x);
+  }
+
+  /** Solves L U x = b. Long rows are summed in four parts, so that additions need not wait for one
+   * another. */
+  #substitute(x: Float64Array): void {
     const { size, rowStart, column, diagonal } = this.#structure;
     const values = this.#values;
     const pivots = this.#pivots;

@@ -115,8 +115,8 @@ export function errorsAt(problem: Problem, trajectory: Trajectory): number[] {
   return worst;
 }
 
-/** The outputs that count: on e5, from 1e11 s on, every double-precision solver's values hang on a
- * difference that rounding breaks, so the outputs before are taken. */
+/** The largest error over the outputs that are compared: on e5, from 1e11 s on, native solvers' values
+ * hang on a difference that rounding breaks, so the outputs before are taken for both sides. */
 export function deliveredError(
   problem: Pick<Problem, "name" | "times">,
   errors: readonly number[],

@@ -4,6 +4,7 @@
  *
  * How to read the table: see README.md beside this file. */
 import { parseArgs } from "node:util";
+import { simulateSensitivities } from "../../lib/simulation/simulate_sensitivities.ts";
 import { medianTime } from "./median_time.ts";
 import { type NativeRun, runPeers } from "./native_peers.ts";
 import {
@@ -67,6 +68,39 @@ async function compileTimes(name: string): Promise<{ cold: number; next: number 
   }
   const middle = (values: number[]) => values.sort((a, b) => a - b)[values.length >> 1];
   return { cold: middle(runs.map((r) => r.cold)), next: middle(runs.map((r) => r.next)) };
+}
+
+/** Time of the concentrations with their sensitivities to every rate constant, over the time of the
+ * concentrations alone, at the same tolerance, and the sensitivities' delivered error. */
+function sensitivityRun(p: Problem, rtol: number): { ratio: number; ms: number; error: number } {
+  const prepared = prepare(p);
+  const { reference } = p;
+  const once = () =>
+    simulateSensitivities(prepared.mechanism, {
+      rateConstants: prepared.rateConstants,
+      initial: prepared.initial,
+      times: p.times,
+      rtol,
+      atol: rtol * p.atolFactor,
+      maxSteps: 1e6,
+    });
+  let result = once();
+  const ms = medianTime(() => result = once(), 300);
+  const plain = medianTime(() => solve(p, prepared, rtol), 300);
+  let error = reference?.sensitivities ? 0 : NaN;
+  reference?.sensitivities?.outputs.forEach((output, at) =>
+    prepared.mechanism.rateConstants.forEach((k, j) =>
+      p.species.forEach((species, i) => {
+        const expected = reference.sensitivities!.values[at][j][i];
+        const difference = Math.abs(result.logarithmic(species, k)[output] - expected);
+        error = Math.max(
+          error,
+          difference / (Math.abs(expected) + reference.sensitivities!.floor[i]),
+        );
+      })
+    )
+  );
+  return { ratio: ms / plain, ms, error };
 }
 
 const fixed = (value: number, digits = 2): string =>
@@ -137,7 +171,30 @@ for (const name of names) {
     `            parse to first step ${fixed(compile.cold, 3)} ms in a new process, then ` +
       `${fixed(compile.next, 3)} ms`,
   );
-  report.push({ problem: name, species: p.species.length, compileMs: compile, own, native });
+  const parameters = p.steps.length;
+  const sensitivities = parameters > 30 ? [] : [1e-4, 1e-6, 1e-8].map((rtol) => {
+    const run = sensitivityRun(p, rtol);
+    const peer = native.find((r) => r.solver === "cvodes-sens" && r.rtol === rtol);
+    const share = (run.ratio - 1) / parameters;
+    console.log(
+      `            sensitivities to ${parameters} constants at ${rtol.toExponential(0)}: ` +
+        `${fixed(run.ms, 3)} ms, 1 + ${fixed(share)} p plain runs (bar 0.5${
+          share <= 0.5 ? "" : ": MISSES"
+        }), error ${fixed(run.error)}` +
+        (peer
+          ? `; native ${fixed(peer.ms, 3)} ms, error ${fixed(peer.sensitivityError ?? NaN)}`
+          : ""),
+    );
+    return { rtol, parameters, ...run };
+  });
+  report.push({
+    problem: name,
+    species: p.species.length,
+    compileMs: compile,
+    own,
+    native,
+    sensitivities,
+  });
 }
 if (scipyFactors.length > 0) {
   console.log(

@@ -1,21 +1,29 @@
 import type { JacobianStructure } from "../jacobian_structure.ts";
+import { literal } from "./source_text.ts";
 
 /** Statements that factor d I − J, entries of the factors in `L`, reciprocal pivots in `P`; they end
  * in `return` of whether every pivot is a number. Values live in constants and variables, so that
  * the whole is straight-line arithmetic. */
 export function factorStatements(structure: JacobianStructure): string[] {
-  const { size, rowStart, column, diagonal, place } = structure;
+  const { size, rowStart, column, diagonal, place, sums, sumOf } = structure;
   const statements: string[] = [];
   const own = new Int32Array(column.length).fill(-1);
-  for (let q = 0; q < place.length; q++) own[place[q]] = q;
+  for (let q = 0; q < place.length; q++) if (place[q] >= 0) own[place[q]] = q;
   const slot = new Int32Array(size);
   for (let i = 0; i < size; i++) {
     const set = new Uint8Array(rowStart[i + 1] - rowStart[i]);
     for (let p = rowStart[i]; p < rowStart[i + 1]; p++) {
       slot[column[p]] = p;
       const q = own[p];
-      const value = column[p] === i ? (q < 0 ? "d" : `d - J[${q}]`) : q < 0 ? "0" : `-J[${q}]`;
-      if (value !== "0") {
+      const sum = sumOf[i] < 0 ? undefined : sums[sumOf[i]];
+      const value = sum
+        ? column[p] === i ? "1" : literal(-(sum.weights[sum.species.indexOf(column[p])] ?? 0))
+        : column[p] === i
+        ? (q < 0 ? "d" : `d - J[${q}]`)
+        : q < 0
+        ? "0"
+        : `-J[${q}]`;
+      if (value !== "0" && value !== "-0") {
         statements.push(`let a${p} = ${value};`);
         set[p - rowStart[i]] = 1;
       }
