@@ -22,26 +22,28 @@ export class Sensitivities {
   readonly trajectory: Trajectory;
   /** The parameters, in order. */
   readonly parameters: readonly string[];
-  readonly #compiled: CompiledNetwork;
+  readonly #place: ArrayLike<number>;
   /** One array an output, all parameters behind one another. */
   readonly #values: readonly Float64Array[];
   readonly #sizes: readonly number[];
 
-  /** @param trajectory the concentrations
+  /** Made by {@link simulateSensitivities}.
+   *
+   * @param trajectory the concentrations
    * @param parameters names
-   * @param compiled the numbering of species
+   * @param place where each species of the mechanism stands among the values of a parameter
    * @param values one array an output
    * @param sizes value of each parameter */
   constructor(
     trajectory: Trajectory,
     parameters: readonly string[],
-    compiled: CompiledNetwork,
+    place: ArrayLike<number>,
     values: readonly Float64Array[],
     sizes: readonly number[],
   ) {
     this.trajectory = trajectory;
     this.parameters = parameters;
-    this.#compiled = compiled;
+    this.#place = place;
     this.#values = values;
     this.#sizes = sizes;
   }
@@ -60,7 +62,7 @@ export class Sensitivities {
           `${(i < 0 ? mechanism.species : this.parameters).slice(0, 20).join(", ")})`,
       );
     }
-    const at = q * this.#compiled.network.size + this.#compiled.place[i];
+    const at = q * this.#place.length + this.#place[i];
     return Float64Array.from(this.#values, (values) => values[at]);
   }
 
@@ -105,12 +107,12 @@ export function simulateSensitivities(
 ): Sensitivities {
   const { parameters: names = mechanism.rateConstants, ...rest } = options;
   const values: Float64Array[] = [];
-  let compiledHere: CompiledNetwork | undefined;
+  let place: ArrayLike<number> = [];
   let integrator: BackwardDifferentiation | undefined;
   const sizes: number[] = [];
   const trajectory = simulateWith(mechanism, rest, {
     integrator(compiled, kernel, coefficients, rtol, atol) {
-      compiledHere = compiled;
+      place = compiled.place;
       const parameters = names.map((name) => {
         const { parameter, size } = readParameter(mechanism, compiled, name, options);
         sizes.push(size);
@@ -137,7 +139,7 @@ export function simulateSensitivities(
       values.push(at);
     },
   });
-  return new Sensitivities(trajectory, names, compiledHere!, values, sizes);
+  return new Sensitivities(trajectory, names, place, values, sizes);
 }
 
 function readParameter(
