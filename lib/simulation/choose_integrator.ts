@@ -29,7 +29,7 @@ export function chooseIntegrator(
   atol: Float64Array,
 ): Integrator {
   const chosen = method ??
-    (kernel.generated || kernel.size <= 60 || rtol >= TIGHT ? "rosenbrock" : "bdf");
+    (kernel.generatedFactors || kernel.size <= 60 || rtol >= TIGHT ? "rosenbrock" : "bdf");
   if (chosen === "rosenbrock") return new Rosenbrock(kernel, coefficients, rtol, atol);
   const share = multistepShare(rtol);
   return new BackwardDifferentiation(

@@ -3,7 +3,8 @@ import { canClose, type ClosingSum, closingSums, renumberSums } from "./closing_
 import { eliminationOrder } from "./elimination_order.ts";
 import { canCompile } from "./generated_code/compile.ts";
 import { generateKernel } from "./generated_code/generate_kernel.ts";
-import { InterpretedKernel } from "./interpreted_kernel.ts";
+import { generateEvaluation } from "./generated_code/generate_evaluation.ts";
+import { type Evaluation, InterpretedKernel } from "./interpreted_kernel.ts";
 import { type JacobianStructure, jacobianStructure } from "./jacobian_structure.ts";
 import type { Kernel } from "./kernel.ts";
 import {
@@ -13,9 +14,13 @@ import {
   renumber,
 } from "./reaction_network.ts";
 
-/** Multiplications of one factorization above which the interpreted kernel is the faster one: longer
+/** Multiplications of one factorization above which factors in tables are the faster ones: longer
  * straight-line functions are optimised late or not at all (see test/bench/README.md). */
 const MOST_GENERATED_PRODUCTS = 600;
+
+/** Reactions above which code for the rates and their derivatives, in pieces, no longer pays: it takes
+ * too long to be optimised. */
+const MOST_GENERATED_REACTIONS = 1500;
 
 /** A mechanism made ready for integration, once: its network in elimination order, the symbolic
  * factorization, and its code. */
@@ -31,6 +36,7 @@ export class CompiledNetwork {
   /** Multiplications and subtractions of one factorization. */
   readonly products: number;
   #generate: (() => Kernel) | undefined;
+  #evaluate: (() => Evaluation) | undefined;
 
   /** @param mechanism the steps
    * @param closing whether conserved sums make their closing species */
@@ -53,18 +59,25 @@ export class CompiledNetwork {
     this.products = products;
   }
 
-  /** Whether {@link makeKernel} generates code of itself. */
-  get prefersGenerated(): boolean {
+  /** What {@link makeKernel} generates of itself: straight-line code for all of the kernel, for the rates
+   * and their derivatives, or none. */
+  get preferred(): "all" | "rates" | "none" {
     const { size, reactions } = this.network;
-    return this.products + size + reactions.length <= MOST_GENERATED_PRODUCTS && canCompile();
+    if (reactions.length > MOST_GENERATED_REACTIONS || !canCompile()) return "none";
+    return this.products + size + reactions.length <= MOST_GENERATED_PRODUCTS ? "all" : "rates";
   }
 
   /** A kernel with arrays of its own.
    *
-   * @param generated whether it is generated code; by default where that is the faster */
-  makeKernel(generated: boolean = this.prefersGenerated): Kernel {
-    if (!generated) return new InterpretedKernel(this.network, this.structure);
-    this.#generate ??= generateKernel(this.network, this.structure);
+   * @param generated what is generated code; by default what is fastest */
+  makeKernel(generated: "all" | "rates" | "none" = this.preferred): Kernel {
+    const { network, structure } = this;
+    if (generated === "none") return new InterpretedKernel(network, structure);
+    if (generated === "rates") {
+      this.#evaluate ??= generateEvaluation(network, structure);
+      return new InterpretedKernel(network, structure, this.#evaluate());
+    }
+    this.#generate ??= generateKernel(network, structure);
     return this.#generate();
   }
 }

@@ -4,12 +4,21 @@ import type { Kernel } from "./kernel.ts";
 import type { ReactionNetwork } from "./reaction_network.ts";
 import { SparseFactors } from "./sparse_factors.ts";
 
+/** Right side and Jacobian made elsewhere, as by generated code. */
+export interface Evaluation {
+  /** f(y) into `dydt`. */
+  rightSide(y: Float64Array, k: Float64Array, dydt: Float64Array): void;
+  /** Entries of J at y, in the order of the structure. */
+  jacobian(y: Float64Array, k: Float64Array, entries: Float64Array): void;
+}
+
 /** A kernel that walks flat tables: the path for large networks, and the twin that generated code is
  * held against. */
 export class InterpretedKernel implements Kernel {
   readonly size: number;
   readonly reactionCount: number;
-  readonly generated = false;
+  readonly generated: boolean;
+  readonly generatedFactors = false;
   readonly sums: readonly ClosingSum[];
   readonly #structure: JacobianStructure;
   readonly #factors: SparseFactors;
@@ -23,10 +32,14 @@ export class InterpretedKernel implements Kernel {
   readonly #change: Float64Array;
   readonly #padded: Float64Array;
   readonly #slope: Float64Array;
+  readonly #evaluation: Evaluation | undefined;
 
   /** @param network species numbered in elimination order
-   * @param structure its symbolic factorization */
-  constructor(network: ReactionNetwork, structure: JacobianStructure) {
+   * @param structure its symbolic factorization
+   * @param evaluation right side and Jacobian in place of its own */
+  constructor(network: ReactionNetwork, structure: JacobianStructure, evaluation?: Evaluation) {
+    this.#evaluation = evaluation;
+    this.generated = evaluation !== undefined;
     const n = network.size;
     const m = network.reactions.length;
     this.size = n;
@@ -65,6 +78,10 @@ export class InterpretedKernel implements Kernel {
   }
 
   rightSide(y: Float64Array, k: Float64Array, dydt: Float64Array): void {
+    if (this.#evaluation !== undefined) {
+      this.#evaluation.rightSide(y, k, dydt);
+      return;
+    }
     const padded = this.#padded;
     const reactants = this.#reactants;
     const start = this.#changeStart;
@@ -85,6 +102,10 @@ export class InterpretedKernel implements Kernel {
   }
 
   linearize(y: Float64Array, k: Float64Array): void {
+    if (this.#evaluation !== undefined) {
+      this.#evaluation.jacobian(y, k, this.#jacobian);
+      return;
+    }
     const { partialReaction, partialOrder, targetStart, target, targetFactor } = this.#structure;
     const padded = this.#padded;
     const others = this.#others;

@@ -8,8 +8,10 @@ export interface Kernel {
   readonly size: number;
   /** Number of reactions. */
   readonly reactionCount: number;
-  /** Whether it runs as generated code. */
+  /** Whether it runs as generated code, at least its rates and their derivatives. */
   readonly generated: boolean;
+  /** Whether its factors are generated code as well. */
+  readonly generatedFactors: boolean;
   /** Rates of the reactions v = k ∏ y into `rates`. */
   rates(y: Float64Array, k: Float64Array, rates: Float64Array): void;
   /** f(y) into `dydt`; linear in k, so that k̇ in place of k gives ∂f/∂t. */

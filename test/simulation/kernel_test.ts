@@ -2,6 +2,8 @@ import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { CompiledNetwork } from "../../lib/simulation/compiled_network.ts";
 import type { InterpretedKernel } from "../../lib/simulation/interpreted_kernel.ts";
+import { parseMechanism } from "../../lib/mechanism/parse_mechanism.ts";
+import { prepare, problem } from "../bench/problems.ts";
 import { randomMechanism } from "./random_mechanism.ts";
 
 const state = (n: number) =>
@@ -18,7 +20,7 @@ describe("over random mass-conserving networks", () => {
   test("generated code and its interpreted twin agree", () => {
     fc.assert(fc.property(randomMechanism(12), ({ mechanism, rateConstants }) => {
       const compiled = new CompiledNetwork(mechanism);
-      const [generated, interpreted] = [compiled.makeKernel(true), compiled.makeKernel(false)];
+      const [generated, interpreted] = [compiled.makeKernel("all"), compiled.makeKernel("none")];
       expect([generated.generated, interpreted.generated]).toEqual([true, false]);
       const k = Float64Array.from(
         compiled.origins,
@@ -51,7 +53,7 @@ describe("over random mass-conserving networks", () => {
   test("the Jacobian is the derivative of the right side", () => {
     fc.assert(fc.property(randomMechanism(), ({ mechanism, rateConstants }) => {
       const compiled = new CompiledNetwork(mechanism);
-      const kernel = compiled.makeKernel(false) as InterpretedKernel;
+      const kernel = compiled.makeKernel("none") as InterpretedKernel;
       const k = Float64Array.from(
         compiled.origins,
         (o) => rateConstants[mechanism.rateConstants[o.rateConstant]],
@@ -90,7 +92,7 @@ describe("over random mass-conserving networks", () => {
             (o) => random.rateConstants[random.mechanism.rateConstants[o.rateConstant]],
           );
           const d = Math.pow(10, decade);
-          for (const generated of [true, false]) {
+          for (const generated of ["all", "rates", "none"] as const) {
             const kernel = compiled.makeKernel(generated);
             const b = state(kernel.size);
             const x = b.slice();
@@ -110,15 +112,40 @@ describe("over random mass-conserving networks", () => {
   });
 });
 
-test("a network that is too large for generated code takes the interpreted path", () => {
-  const lines = Array.from(
-    { length: 700 },
-    (_, i) => `A${i} + A${(i * 7 + 3) % 700} -> A${(i * 5 + 1) % 700}`,
-  )
-    .filter((line) => new Set(line.split(/ \+ | -> /)).size === 3);
-  return import("../../lib/mechanism/parse_mechanism.ts").then(({ parseMechanism }) => {
-    const compiled = new CompiledNetwork(parseMechanism(lines.join("\n")));
-    expect(compiled.prefersGenerated).toBe(false);
-    expect(compiled.makeKernel().generated).toBe(false);
+test("code is generated for all of a small network, for the rates of a larger one, for none of a large one", () => {
+  const network = (n: number, perSpecies: number) =>
+    new CompiledNetwork(parseMechanism(
+      Array.from({ length: perSpecies * n }, (_, i) =>
+        [i, i * 7 + 3, i * 5 + 1].map((q) => `A${q % n}`))
+        .filter((names) =>
+          new Set(names).size === 3
+        )
+        .map(([a, b, c]) => `${a} + ${b} -> ${c}`).join("\n"),
+    ));
+  const [small, middle, large] = [network(12, 1), network(150, 2), network(700, 3)];
+  expect([small, middle, large].map((c) => c.preferred)).toEqual(["all", "rates", "none"]);
+  expect([small, middle, large].map((c) => c.makeKernel().generated)).toEqual([true, true, false]);
+  expect([small, middle, large].map((c) => c.makeKernel().generatedFactors)).toEqual([
+    true,
+    false,
+    false,
+  ]);
+});
+
+test("code in several functions agrees with its interpreted twin", () => {
+  const p = problem("random300");
+  const compiled = new CompiledNetwork(prepare(p).mechanism);
+  const k = Float64Array.from(p.steps, ([, value]) => value);
+  const [a, b] = (["rates", "none"] as const).map((generated) => {
+    const kernel = compiled.makeKernel(generated);
+    const y = state(kernel.size);
+    const f = new Float64Array(kernel.size);
+    kernel.rightSide(y, k, f);
+    kernel.linearize(y, k);
+    const product = new Float64Array(kernel.size);
+    kernel.timesJacobian(y, product);
+    return { f, product };
   });
+  close(a.f, b.f, 1e-13);
+  close(a.product, b.product, 1e-13);
 });

@@ -47,7 +47,7 @@ export function kernelSource(network: ReactionNetwork, structure: JacobianStruct
     `const L = new Float64Array(buffer, ${8 * entries}, ${factors});`,
     `const P = new Float64Array(buffer, ${8 * (entries + factors)}, ${n + 1});`,
     `return {`,
-    `size: ${n}, reactionCount: ${network.reactions.length}, generated: true, sums,`,
+    `size: ${n}, reactionCount: ${network.reactions.length}, generated: true, generatedFactors: true, sums,`,
     `rates(y, k, rates) {`,
     ...rates,
     `},`,

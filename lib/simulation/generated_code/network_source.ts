@@ -34,14 +34,15 @@ export function rightSideStatements(
   return statements;
 }
 
-/** Statements for the entries of J into the array `J`, from species values named by `name`. */
-export function jacobianStatements(
+/** Sources of the partial derivatives ∂v/∂y, and for each entry of J the partial derivatives in it, each
+ * with its factor. */
+export function jacobianTerms(
   network: ReactionNetwork,
   structure: JacobianStructure,
   name: (species: number) => string,
-): string[] {
-  const statements: string[] = [];
-  const entries: [number, string][][] = Array.from(
+): { partials: string[]; entries: [number, number][][] } {
+  const partials: string[] = [];
+  const entries: [number, number][][] = Array.from(
     { length: structure.jacobianColumn.length },
     () => [],
   );
@@ -52,11 +53,25 @@ export function jacobianStatements(
     const order = structure.partialOrder[p];
     const factors = [`k[${j}]`, ...others.map(name)];
     if (order !== 1) factors.unshift(literal(order));
-    statements.push(`const d${p} = ${factors.join(" * ")};`);
+    partials.push(factors.join(" * "));
     for (let q = structure.targetStart[p]; q < structure.targetStart[p + 1]; q++) {
-      entries[structure.target[q]].push([structure.targetFactor[q], `d${p}`]);
+      entries[structure.target[q]].push([structure.targetFactor[q], p]);
     }
   }
-  entries.forEach((terms, q) => statements.push(`J[${q}] = ${sum(terms)};`));
-  return statements;
+  return { partials, entries };
+}
+
+/** Statements for the entries of J into the array `J`, from species values named by `name`. */
+export function jacobianStatements(
+  network: ReactionNetwork,
+  structure: JacobianStructure,
+  name: (species: number) => string,
+): string[] {
+  const { partials, entries } = jacobianTerms(network, structure, name);
+  return [
+    ...partials.map((text, p) => `const d${p} = ${text};`),
+    ...entries.map((terms, q) =>
+      `J[${q}] = ${sum(terms.map(([factor, p]) => [factor, `d${p}`]))};`
+    ),
+  ];
 }
