@@ -125,6 +125,8 @@ export type {
   ReverseExpression,
 } from "./lib/simulation/rate_expression.ts";
 export type { TemperatureTable } from "./lib/simulation/temperature_programme.ts";
+export { Sensitivities, simulateSensitivities } from "./lib/simulation/simulate_sensitivities.ts";
+export type { SensitivityOptions } from "./lib/simulation/simulate_sensitivities.ts";
 export { simulateStochastic } from "./lib/simulation/simulate_stochastic.ts";
 export type { SimulateStochasticOptions } from "./lib/simulation/simulate_stochastic.ts";
 export { StochasticTrajectory } from "./lib/simulation/stochastic_trajectory.ts";
