@@ -1,4 +1,5 @@
 import type { Mechanism } from "../mechanism/mechanism.ts";
+import { readQuantity } from "../quantity/read_quantity.ts";
 import { BackwardDifferentiation } from "./backward_differentiation.ts";
 import type { CompiledNetwork } from "./compiled_network.ts";
 import { type Parameter, SensitivityHistory } from "./sensitivity_history.ts";
@@ -153,7 +154,7 @@ function readParameter(
   if (species >= 0) {
     return {
       parameter: { reactions: [], factors: new Float64Array(0), species: compiled.place[species] },
-      size: Number(options.initial[bracketed![1]] ?? 0),
+      size: readQuantity(options.initial[bracketed![1]] ?? 0, "mol/L", `the start of ${name}`),
     };
   }
   const symbol = mechanism.rateConstants.indexOf(name);
@@ -171,7 +172,7 @@ function readParameter(
         `as a number, or leave it out of parameters`,
     );
   }
-  const thirdBody = Number(options.initial.M ?? 1);
+  const thirdBody = readQuantity(options.initial.M ?? 1, "mol/L", "the third body M");
   const reactions: number[] = [];
   const factors: number[] = [];
   compiled.origins.forEach((origin, j) => {

@@ -30,6 +30,15 @@ describe("sensitivities follow their closed forms", () => {
       expect(Math.abs(s + 0.8 * times[i] * a(times[i]))).toBeLessThan(1e-6)
     );
   });
+  test("concentrations at the start may carry their unit", () => {
+    const run = simulateSensitivities(mechanism`A ->[k] B`, {
+      rateConstants: { k: 1 },
+      initial: { A: "20 mmol/L" },
+      times: [1],
+      parameters: ["[A]"],
+    });
+    expect(run.logarithmic("A", "[A]")[0]).toBeCloseTo(0.02 * Math.exp(-1), 7);
+  });
   test("a constant shared by two steps, and a third body", () => {
     const run = simulateSensitivities(
       mechanism`
