@@ -13,7 +13,7 @@ const TIGHT = 5e-5;
 /** A multistep method adds up the errors of its many steps, the more of them the tighter the tolerance
  * is: it is given this part of it (measured on random networks of 100 to 3000 species). */
 function multistepShare(rtol: number): number {
-  const share = Math.min(0.1, 0.1 * Math.pow(rtol / 1e-6, 0.1));
+  const share = Math.min(0.1, 0.1 * Math.pow(rtol / 1e-6, 0.125));
   return Math.max(share, Math.min(1, 2e-14 / rtol));
 }
 
