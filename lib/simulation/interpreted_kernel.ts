@@ -1,7 +1,7 @@
 import type { ClosingSum } from "./closing_sums.ts";
 import type { JacobianStructure } from "./jacobian_structure.ts";
 import type { Kernel } from "./kernel.ts";
-import type { ReactionNetwork } from "./reaction_network.ts";
+import { changesBySpecies, type ReactionNetwork } from "./reaction_network.ts";
 import { SparseFactors } from "./sparse_factors.ts";
 
 /** Right side and Jacobian made elsewhere, as by generated code. */
@@ -27,9 +27,12 @@ export class InterpretedKernel implements Kernel {
   readonly #reactants: Int32Array;
   /** The other reactants of each partial derivative, two places each. */
   readonly #others: Int32Array;
+  /** The reactions that change species i, and by how much, are at changeStart[i] … changeStart[i + 1] − 1:
+   * sums by species take two thirds of the time that adding each rate where it belongs takes. */
   readonly #changeStart: Int32Array;
-  readonly #changed: Int32Array;
+  readonly #changing: Int32Array;
   readonly #change: Float64Array;
+  readonly #rates: Float64Array;
   readonly #padded: Float64Array;
   readonly #slope: Float64Array;
   readonly #evaluation: Evaluation | undefined;
@@ -51,13 +54,13 @@ export class InterpretedKernel implements Kernel {
     this.#padded = new Float64Array(n + 1).fill(1);
     this.#slope = new Float64Array(n);
     this.#reactants = new Int32Array(3 * m).fill(n);
-    this.#changeStart = new Int32Array(m + 1);
-    network.reactions.forEach(({ reactants, changed }, j) => {
-      this.#reactants.set(reactants, 3 * j);
-      this.#changeStart[j + 1] = this.#changeStart[j] + changed.length;
-    });
-    this.#changed = Int32Array.from(network.reactions.flatMap((r) => r.changed));
-    this.#change = Float64Array.from(network.reactions.flatMap((r) => r.change));
+    this.#rates = new Float64Array(m);
+    network.reactions.forEach(({ reactants }, j) => this.#reactants.set(reactants, 3 * j));
+    const bySpecies = changesBySpecies(network);
+    this.#changeStart = new Int32Array(n + 1);
+    bySpecies.forEach((list, i) => this.#changeStart[i + 1] = this.#changeStart[i] + list.length);
+    this.#changing = Int32Array.from(bySpecies.flatMap((list) => list.map(([, j]) => j)));
+    this.#change = Float64Array.from(bySpecies.flatMap((list) => list.map(([factor]) => factor)));
     const partials = structure.partialReaction.length;
     this.#others = new Int32Array(2 * partials).fill(n);
     for (let p = 0; p < partials; p++) {
@@ -82,22 +85,16 @@ export class InterpretedKernel implements Kernel {
       this.#evaluation.rightSide(y, k, dydt);
       return;
     }
-    const padded = this.#padded;
-    const reactants = this.#reactants;
+    const rates = this.#rates;
     const start = this.#changeStart;
-    const changed = this.#changed;
+    const changing = this.#changing;
     const change = this.#change;
-    const n = this.size;
-    const m = this.reactionCount;
-    for (let i = 0; i < n; i++) {
-      padded[i] = y[i];
-      dydt[i] = 0;
-    }
+    this.rates(y, k, rates);
     let q = 0;
-    for (let j = 0, a = 0; j < m; j++, a += 3) {
-      const rate = k[j] * padded[reactants[a]] * padded[reactants[a + 1]] *
-        padded[reactants[a + 2]];
-      for (const end = start[j + 1]; q < end; q++) dydt[changed[q]] += change[q] * rate;
+    for (let i = 0; i < this.size; i++) {
+      let sum = 0;
+      for (const end = start[i + 1]; q < end; q++) sum += change[q] * rates[changing[q]];
+      dydt[i] = sum;
     }
   }
 

@@ -89,3 +89,12 @@ export function renumber(network: ReactionNetwork, place: Int32Array): ReactionN
     })),
   };
 }
+
+/** For each species, the reactions that change it and by how much. */
+export function changesBySpecies(network: ReactionNetwork): [number, number][][] {
+  const lists: [number, number][][] = Array.from({ length: network.size }, () => []);
+  network.reactions.forEach(({ changed, change }, j) => {
+    changed.forEach((i, q) => lists[i].push([change[q], j]));
+  });
+  return lists;
+}

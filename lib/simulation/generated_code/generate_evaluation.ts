@@ -1,8 +1,8 @@
 import type { JacobianStructure } from "../jacobian_structure.ts";
 import type { Evaluation } from "../interpreted_kernel.ts";
-import type { ReactionNetwork } from "../reaction_network.ts";
+import { changesBySpecies, type ReactionNetwork } from "../reaction_network.ts";
 import { compile } from "./compile.ts";
-import { changesBySpecies, jacobianTerms, rateText } from "./network_source.ts";
+import { jacobianTerms, rateText } from "./network_source.ts";
 import { sum } from "./source_text.ts";
 
 /** Products and sums that one function may hold: V8 leaves a function of more than 60 KB of bytecode

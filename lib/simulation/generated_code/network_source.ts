@@ -1,5 +1,5 @@
 import type { JacobianStructure } from "../jacobian_structure.ts";
-import type { ReactionNetwork } from "../reaction_network.ts";
+import { changesBySpecies, type ReactionNetwork } from "../reaction_network.ts";
 import { literal, sum } from "./source_text.ts";
 
 /** Source of one rate: `k[j] * u0 * u1`, with the name of species i given by `name`. */
@@ -9,15 +9,6 @@ export function rateText(
   name: (species: number) => string,
 ): string {
   return [`k[${j}]`, ...network.reactions[j].reactants.map(name)].join(" * ");
-}
-
-/** For each species, the reactions that change it and by how much. */
-export function changesBySpecies(network: ReactionNetwork): [number, number][][] {
-  const lists: [number, number][][] = Array.from({ length: network.size }, () => []);
-  network.reactions.forEach(({ changed, change }, j) => {
-    changed.forEach((i, q) => lists[i].push([change[q], j]));
-  });
-  return lists;
 }
 
 /** Statements for the rates v0, v1 …, then f0, f1 … as constants. */
