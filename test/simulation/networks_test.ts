@@ -38,8 +38,8 @@ describe.each(METHODS)("%s over random reversible networks", (method) => {
     fc.assert(
       fc.property(reversibleNetwork(), (network) => {
         const { mechanism, initial, composition } = network;
-        // drift grows with the step over the fastest relaxation time: 1e-12 here, 1e-9 at 1e5 s
-      const trajectory = run(network, method, 1e-4, [0.01, 1, 30]);
+        // drift grows with the step over the fastest relaxation time: 1e-12 here, up to 6e-10 at 1e4 s (measured)
+        const trajectory = run(network, method, 1e-4, [0.01, 1, 30]);
         for (const element of [0, 1]) {
           const weights = mechanism.species.map((s) => composition[s][element]);
           const start = mechanism.species.reduce((sum, s, i) => sum + weights[i] * initial[s], 0);
