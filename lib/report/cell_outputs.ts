@@ -19,10 +19,14 @@ export class CellOutputs {
     return this.#outputs;
   }
 
-  /** Takes a message; those that carry no output are passed over. */
+  /** Takes a message; those that carry no output are passed over.
+   *
+   * @throws {TypeError} if it lacks what the notebook format asks for (a cell may broadcast what it likes) */
   take(message: JupyterMessage): void {
     const { content } = message;
-    switch (message.header.msg_type) {
+    const type = message.header.msg_type;
+    checkContent(type, content);
+    switch (type) {
       case "stream":
         return this.#stream(content.name, content.text);
       case "display_data":
@@ -84,4 +88,33 @@ export class CellOutputs {
       }
     }
   }
+}
+
+/** Fields that the notebook format asks for in each kind of output. */
+const NEEDED: Readonly<Record<string, Readonly<Record<string, (value: unknown) => boolean>>>> = {
+  stream: {
+    name: (value) => value === "stdout" || value === "stderr",
+    text: (value) => typeof value === "string",
+  },
+  display_data: { data: isObject },
+  update_display_data: { data: isObject },
+  execute_result: { data: isObject },
+  error: {
+    ename: (value) => typeof value === "string",
+    evalue: (value) => typeof value === "string",
+  },
+};
+
+function checkContent(type: string, content: Readonly<Record<string, unknown>>): void {
+  for (const [field, fits] of Object.entries(NEEDED[type] ?? {})) {
+    if (fits(content[field])) continue;
+    throw new TypeError(
+      `Cannot keep an output: a message ${type} was broadcast with ` +
+        `${JSON.stringify(content[field])} as its ${field}`,
+    );
+  }
+}
+
+function isObject(value: unknown): boolean {
+  return typeof value === "object" && value !== null && !Array.isArray(value);
 }

@@ -1,5 +1,7 @@
+import { type ConnectionFile, writeConnectionFile } from "./connection_file.ts";
+import { deadline } from "./deadline.ts";
 import { type JupyterMessage, MessageSigner, request } from "./jupyter_message.ts";
-import { ZmtpSocket } from "./zmtp_socket.ts";
+import { ZmtpSocket, type ZmtpSocketType } from "./zmtp_socket.ts";
 
 /** A kernel that could not be started, or that ended by itself. */
 export class KernelError extends Error {
@@ -16,83 +18,98 @@ export class KernelError extends Error {
 export interface Exchange {
   /** Id of the request. */
   readonly id: string;
-  /** The reply, or `undefined` if the kernel ended. */
+  /** The reply, or `undefined` if the kernel failed. */
   readonly reply: Promise<JupyterMessage | undefined>;
 }
 
-/** Longest time for a kernel to start, ms. */
-const START_TIMEOUT = 60_000;
+/** Longest time for a kernel to start, s. */
+const START_TIMEOUT = 60;
 /** Longest time for it to end when asked to, ms. */
 const END_TIMEOUT = 2_000;
+/** Longest time that the end of a process may be told later than that of its connections, ms. */
+const LATE = 500;
 
 /** A running Deno kernel: a process of our own, reached over loopback. */
 export class Kernel {
   readonly #process: Deno.ChildProcess;
   readonly #signer: MessageSigner;
+  readonly #connection: ConnectionFile;
   readonly #session = crypto.randomUUID();
   readonly #waiting = new Map<string, (reply: JupyterMessage | undefined) => void>();
-  readonly #folder: string;
-  #shell!: ZmtpSocket;
-  #control!: ZmtpSocket;
-  #iopub!: ZmtpSocket;
+  readonly #sockets: ZmtpSocket[] = [];
+  readonly #ended: Promise<void>;
+  #fail!: (why: string) => void;
+  #shell?: ZmtpSocket;
+  #control?: ZmtpSocket;
   #listener: (message: JupyterMessage) => void = () => {};
-  #ended = false;
+  #hasEnded = false;
+  #closing = false;
   #stderr = "";
-  /** Settles when the process ends. */
-  readonly ended: Promise<void>;
+  /** Settles, with what happened, when the process ends or can no longer be talked to. */
+  readonly failed: Promise<string>;
 
-  private constructor(process: Deno.ChildProcess, signer: MessageSigner, folder: string) {
+  private constructor(
+    process: Deno.ChildProcess,
+    signer: MessageSigner,
+    connection: ConnectionFile,
+  ) {
     this.#process = process;
     this.#signer = signer;
-    this.#folder = folder;
-    this.ended = process.status.then(() => {
-      this.#ended = true;
-      for (const settle of this.#waiting.values()) settle(undefined);
-      this.#waiting.clear();
+    this.#connection = connection;
+    this.failed = new Promise((resolve) => {
+      this.#fail = (why) => {
+        resolve(why);
+        for (const settle of this.#waiting.values()) settle(undefined);
+        this.#waiting.clear();
+      };
     });
-    this.#collectStderr();
+    const words = this.#collectStderr();
+    this.#ended = process.status.then(async ({ code, signal }) => {
+      this.#hasEnded = true;
+      await Promise.race([words, delay(LATE)]);
+      this.#fail(`it ended by itself (${signal ?? `exit code ${code}`})`);
+    });
   }
 
   /** Starts a kernel in a folder and waits until it answers and its outputs arrive.
    *
-   * @param cwd folder of the notebook @throws {KernelError} if it does not start */
-  static async start(cwd: string): Promise<Kernel> {
-    const folder = await Deno.makeTempDir({ prefix: "ratebook-kernel-" });
-    const key = crypto.randomUUID();
-    const [shell_port, iopub_port, stdin_port, control_port, hb_port] = freePorts(5);
-    const connection = { shell_port, iopub_port, stdin_port, control_port, hb_port };
-    const file = `${folder}/connection.json`;
-    await Deno.writeTextFile(
-      file,
-      JSON.stringify({
-        ...connection,
-        transport: "tcp",
-        ip: "127.0.0.1",
-        key,
-        signature_scheme: "hmac-sha256",
-        kernel_name: "deno",
-      }),
-    );
-    const process = new Deno.Command(Deno.execPath(), {
-      args: ["jupyter", "--kernel", "--conn", file],
-      cwd,
-      stdin: "null",
-      stdout: "null",
-      stderr: "piped",
-    }).spawn();
-    const kernel = new Kernel(process, await MessageSigner.create(key), folder);
+   * @param cwd folder of the notebook @param signal gives up
+   * @throws {KernelError} if it does not start @throws {DOMException} if the signal aborts */
+  static async start(cwd: string, signal?: AbortSignal): Promise<Kernel> {
+    const connection = await writeConnectionFile();
+    let process: Deno.ChildProcess;
     try {
-      await kernel.#connect(connection);
-      return kernel;
+      process = new Deno.Command(Deno.execPath(), {
+        args: ["jupyter", "--kernel", "--conn", connection.path],
+        cwd,
+        stdin: "null",
+        stdout: "null",
+        stderr: "piped",
+      }).spawn();
+    } catch (error) {
+      await connection.remove();
+      throw error;
+    }
+    const kernel = new Kernel(process, await MessageSigner.create(connection.key), connection);
+    const limit = deadline(START_TIMEOUT, signal);
+    try {
+      const why = await Promise.race([
+        kernel.#connect().then(() => undefined),
+        kernel.failed,
+        limit.reached,
+      ]);
+      if (why === undefined) return kernel;
+      if (why === "aborted") signal!.throwIfAborted();
+      const told = why === "timeout" ? `it did not answer within ${START_TIMEOUT} s` : why;
+      throw new KernelError(
+        `Cannot start the Deno kernel: ${told}\n${kernel.standardError}`.trim(),
+      );
     } catch (error) {
       await kernel.shutdown();
       throw error;
+    } finally {
+      limit.clear();
     }
-  }
-
-  /** Whether the process has ended. */
-  get hasEnded(): boolean {
-    return this.#ended;
   }
 
   /** What the process wrote on standard error. */
@@ -101,7 +118,7 @@ export class Kernel {
       .join("\n").trim();
   }
 
-  /** Sets who gets the messages that the kernel broadcasts. */
+  /** Sets who gets the messages that the kernel broadcasts, and its requests for input. */
   listen(listener: (message: JupyterMessage) => void): void {
     this.#listener = listener;
   }
@@ -113,70 +130,63 @@ export class Kernel {
       silent: false,
       store_history: options.storeHistory,
       user_expressions: {},
-      allow_stdin: false,
+      // Allowed, so that a request for input is seen and can be refused; else the code would go on with null.
+      allow_stdin: true,
       stop_on_error: true,
     });
   }
 
   /** Ends the kernel: asks first, then ends its process; leaves nothing behind. */
   async shutdown(): Promise<void> {
-    if (!this.#ended && this.#control) {
+    this.#closing = true;
+    if (!this.#hasEnded && this.#control) {
       const ask = request("shutdown_request", { restart: false }, this.#session);
-      await this.#signer.encode(ask).then((wire) => this.#control.send(wire)).catch(() => {});
-      await Promise.race([this.ended, delay(END_TIMEOUT)]);
+      await this.#signer.encode(ask).then((wire) => this.#control!.send(wire)).catch(() => {});
+      await Promise.race([this.#ended, delay(END_TIMEOUT)]);
     }
-    if (!this.#ended) {
+    if (!this.#hasEnded) {
       try {
         this.#process.kill("SIGKILL");
       } catch {
         // Ended in the meantime.
       }
-      await this.ended;
     }
-    for (const socket of [this.#shell, this.#control, this.#iopub]) socket?.close();
-    await Deno.remove(this.#folder, { recursive: true }).catch(() => {});
+    await this.#ended;
+    for (const socket of this.#sockets) socket.close();
+    await this.#connection.remove();
   }
 
-  async #connect(ports: { shell_port: number; iopub_port: number; control_port: number }) {
-    const deadline = Date.now() + START_TIMEOUT;
-    this.#shell = await this.#reach(ports.shell_port, "DEALER", deadline);
-    this.#control = await this.#reach(ports.control_port, "DEALER", deadline);
-    this.#iopub = await this.#reach(ports.iopub_port, "SUB", deadline);
+  async #connect(): Promise<void> {
+    const { ports } = this.#connection;
+    // The kernel sends a request for input to the peer that has the identity of the one that asked for the cell.
+    const identity = this.#session;
+    this.#shell = await this.#reach(ports.shell_port, "DEALER", identity);
+    const stdin = await this.#reach(ports.stdin_port, "DEALER", identity);
+    this.#control = await this.#reach(ports.control_port, "DEALER");
+    const iopub = await this.#reach(ports.iopub_port, "SUB");
     this.#pump(this.#shell, (message) => this.#settle(message));
     this.#pump(this.#control, () => {});
-    this.#pump(this.#iopub, (message) => this.#listener(message));
+    this.#pump(stdin, (message) => this.#listener(message));
+    this.#pump(iopub, (message) => this.#listener(message));
     // A subscription takes effect some time after it is sent: ask until a broadcast arrives.
     const heard = new Promise<void>((resolve) => this.listen(() => resolve()));
-    for (;;) {
+    for (let got = false; !got && !this.#closing;) {
       await (await this.#ask("kernel_info_request", {})).reply;
-      const got = await Promise.race([heard.then(() => true), delay(50).then(() => false)]);
-      if (got) return;
-      this.#checkStart(deadline);
+      got = await Promise.race([heard.then(() => true), delay(50).then(() => false)]);
     }
   }
 
-  async #reach(port: number, type: "DEALER" | "SUB", deadline: number): Promise<ZmtpSocket> {
+  async #reach(port: number, type: ZmtpSocketType, identity?: string): Promise<ZmtpSocket> {
     for (;;) {
-      this.#checkStart(deadline);
       try {
-        return await ZmtpSocket.connect(port, type);
+        const socket = await ZmtpSocket.connect(port, type, identity);
+        this.#sockets.push(socket);
+        if (this.#closing) socket.close();
+        return socket;
       } catch (error) {
-        if (!(error instanceof Deno.errors.ConnectionRefused)) throw error;
+        if (!(error instanceof Deno.errors.ConnectionRefused) || this.#closing) throw error;
         await delay(20);
       }
-    }
-  }
-
-  #checkStart(deadline: number): void {
-    if (this.#ended) {
-      throw new KernelError(
-        `Cannot start the Deno kernel: it ended at once. ${this.standardError}`,
-      );
-    }
-    if (Date.now() > deadline) {
-      throw new KernelError(
-        `Cannot start the Deno kernel: it did not answer within ${START_TIMEOUT / 1000} s`,
-      );
     }
   }
 
@@ -184,12 +194,12 @@ export class Kernel {
     const message = request(type, content, this.#session);
     const id = message.header.msg_id;
     const reply = new Promise<JupyterMessage | undefined>((resolve) => {
-      if (this.#ended) resolve(undefined);
-      else this.#waiting.set(id, resolve);
+      this.#waiting.set(id, resolve);
+      this.failed.then(() => resolve(undefined));
     });
-    await this.#shell.send(await this.#signer.encode(message)).catch((error) => {
-      if (!this.#ended) throw error;
-    });
+    await this.#shell!.send(await this.#signer.encode(message)).catch((error) =>
+      this.#fail(`a message could not be sent to it (${error.message})`)
+    );
     return { id, reply };
   }
 
@@ -199,11 +209,19 @@ export class Kernel {
     this.#waiting.delete(id);
   }
 
+  /** Reads a connection to its end. Whatever goes wrong is told as a failure of the kernel, never thrown:
+   * nobody waits for this work. */
   async #pump(socket: ZmtpSocket, take: (message: JupyterMessage) => void): Promise<void> {
-    for (;;) {
-      const wire = await socket.receive();
-      if (!wire) return;
-      take(await this.#signer.decode(wire));
+    try {
+      for (;;) {
+        const wire = await socket.receive();
+        if (!wire) break;
+        take(await this.#signer.decode(wire));
+      }
+      await Promise.race([this.#ended, delay(LATE)]);
+      this.#fail("it closed a connection");
+    } catch (error) {
+      this.#fail(error instanceof Error ? error.message : String(error));
     }
   }
 
@@ -213,17 +231,6 @@ export class Kernel {
       this.#stderr = (this.#stderr + text).slice(-4000);
     }
   }
-}
-
-/** Ports on loopback that nobody uses now. */
-function freePorts(count: number): number[] {
-  const listeners = Array.from(
-    { length: count },
-    () => Deno.listen({ hostname: "127.0.0.1", port: 0 }),
-  );
-  const ports = listeners.map((listener) => listener.addr.port);
-  for (const listener of listeners) listener.close();
-  return ports;
 }
 
 function delay(ms: number): Promise<void> {

@@ -1,5 +1,8 @@
 import { encodeFrame, FrameDecoder, type ZmtpFrame } from "./zmtp_frame.ts";
 
+/** Longest silence of a peer while hands are shaken, ms. */
+const HANDSHAKE_TIMEOUT = 10_000;
+
 /** Socket types used towards a kernel. */
 export type ZmtpSocketType = "DEALER" | "SUB";
 
@@ -19,20 +22,28 @@ export class ZmtpSocket {
 
   /** Connects to a port on loopback and shakes hands.
    *
+   * @param port where @param type what this end is @param identity name under which the peer files this end
    * @throws {Deno.errors.ConnectionRefused} if nobody listens
-   * @throws {RangeError} if the peer does not speak ZMTP 3 */
-  static async connect(port: number, type: ZmtpSocketType): Promise<ZmtpSocket> {
+   * @throws {RangeError} if the peer does not speak ZMTP 3, or says nothing for 10 s */
+  static async connect(
+    port: number,
+    type: ZmtpSocketType,
+    identity?: string,
+  ): Promise<ZmtpSocket> {
     const connection = await Deno.connect({ hostname: "127.0.0.1", port });
     connection.setNoDelay(true);
     const socket = new ZmtpSocket(connection);
+    const silence = setTimeout(() => socket.close(), HANDSHAKE_TIMEOUT);
     try {
-      await socket.#shakeHands(type);
+      await socket.#shakeHands(type, identity);
       if (type === "SUB") {
         await socket.#write([{ more: false, command: false, body: SUBSCRIBE_ALL }]);
       }
     } catch (error) {
       socket.close();
       throw error;
+    } finally {
+      clearTimeout(silence);
     }
     return socket;
   }
@@ -67,13 +78,20 @@ export class ZmtpSocket {
     }
   }
 
-  async #shakeHands(type: ZmtpSocketType): Promise<void> {
+  async #shakeHands(type: ZmtpSocketType, identity: string | undefined): Promise<void> {
     await writeAll(this.#connection, greeting());
-    const theirs = await readExactly(this.#connection, 64);
+    const theirs = await this.#readGreeting();
     if (theirs[0] !== 0xff || theirs[9] !== 0x7f || theirs[10] < 3) {
       throw new RangeError(`Cannot talk to the peer: its greeting is not that of ZMTP 3`);
     }
-    await this.#write([{ more: false, command: true, body: readyCommand(type) }]);
+    const mechanism = new TextDecoder().decode(theirs.subarray(12, 32)).replace(/\0+$/, "");
+    if (mechanism !== "NULL") {
+      throw new RangeError(
+        `Cannot talk to the peer: it wants the mechanism ${mechanism}, not NULL`,
+      );
+    }
+    const ready = readyCommand(type, identity);
+    await this.#write([{ more: false, command: true, body: ready }]);
     const answer = await this.#nextFrame();
     const name = answer && new TextDecoder().decode(answer.body.subarray(1, 1 + answer.body[0]));
     if (!answer?.command || name !== "READY") {
@@ -84,20 +102,36 @@ export class ZmtpSocket {
   async #nextFrame(): Promise<ZmtpFrame | undefined> {
     const buffer = new Uint8Array(65536);
     while (this.#ready.length === 0) {
-      let count: number | null;
-      try {
-        count = await this.#connection.read(buffer);
-      } catch (error) {
-        if (error instanceof Deno.errors.BadResource || error instanceof Deno.errors.Interrupted) {
-          return undefined;
-        }
-        if (error instanceof Deno.errors.ConnectionReset) return undefined;
-        throw error;
-      }
+      const count = await this.#read(buffer);
       if (count === null) return undefined;
       this.#ready.push(...this.#decoder.push(buffer.slice(0, count)));
     }
     return this.#ready.shift();
+  }
+
+  /** Reads what is there; `null` at the end, whichever side made it. */
+  async #read(buffer: Uint8Array): Promise<number | null> {
+    try {
+      return await this.#connection.read(buffer);
+    } catch (error) {
+      const { BadResource, Interrupted, ConnectionReset } = Deno.errors;
+      if ([BadResource, Interrupted, ConnectionReset].some((kind) => error instanceof kind)) {
+        return null;
+      }
+      throw error;
+    }
+  }
+
+  async #readGreeting(): Promise<Uint8Array> {
+    const bytes = new Uint8Array(64);
+    for (let at = 0; at < bytes.length;) {
+      const count = await this.#read(bytes.subarray(at));
+      if (count === null) {
+        throw new RangeError(`Cannot talk to the peer: its greeting ended after ${at} bytes`);
+      }
+      at += count;
+    }
+    return bytes;
   }
 
   /** Messages are written whole, one after the other. */
@@ -123,26 +157,19 @@ function greeting(): Uint8Array {
   return bytes;
 }
 
-/** READY with the property Socket-Type. */
-function readyCommand(type: ZmtpSocketType): Uint8Array {
+/** READY with the property Socket-Type and, where there is one, Identity. */
+function readyCommand(type: ZmtpSocketType, identity: string | undefined): Uint8Array {
+  const properties = [["Socket-Type", type], ...(identity ? [["Identity", identity]] : [])];
   const text = (value: string) => new TextEncoder().encode(value);
-  const key = text("Socket-Type");
-  const value = text(type);
-  const length = new Uint8Array(4);
-  new DataView(length.buffer).setUint32(0, value.length);
-  return Uint8Array.from([5, ...text("READY"), key.length, ...key, ...length, ...value]);
+  const bytes = [5, ...text("READY")];
+  for (const [name, value] of properties) {
+    const length = new Uint8Array(4);
+    new DataView(length.buffer).setUint32(0, text(value).length);
+    bytes.push(name.length, ...text(name), ...length, ...text(value));
+  }
+  return Uint8Array.from(bytes);
 }
 
 async function writeAll(connection: Deno.TcpConn, bytes: Uint8Array): Promise<void> {
   for (let at = 0; at < bytes.length;) at += await connection.write(bytes.subarray(at));
-}
-
-async function readExactly(connection: Deno.TcpConn, count: number): Promise<Uint8Array> {
-  const bytes = new Uint8Array(count);
-  for (let at = 0; at < count;) {
-    const got = await connection.read(bytes.subarray(at));
-    if (got === null) throw new RangeError(`Cannot talk to the peer: it ended after ${at} bytes`);
-    at += got;
-  }
-  return bytes;
 }

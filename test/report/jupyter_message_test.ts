@@ -4,13 +4,30 @@ import { MessageSigner, request } from "../../lib/report/jupyter_message.ts";
 const bytes = (text: string) => new TextEncoder().encode(text);
 
 describe("signatures", () => {
-  test("are HMAC-SHA256: test case 2 of RFC 4231", async () => {
-    // RFC 4231, 4.3: key "Jefe", data "what do ya want for nothing?".
-    const signer = await MessageSigner.create("Jefe");
-    const parts = ["what do ya ", "want ", "for ", "nothing?"].map(bytes);
-    expect(await signer.sign(parts)).toBe(
+  // RFC 4231, 4.2, 4.3 and 4.5 (test cases 1, 2, 4): those whose key is text, as keys of kernels are.
+  test.each([
+    [
+      "1",
+      "\x0b".repeat(20),
+      bytes("Hi There"),
+      "b0344c61d8db38535ca8afceaf0bf12b881dc200c9833da726e9376c2e32cff7",
+    ],
+    [
+      "2",
+      "Jefe",
+      bytes("what do ya want for nothing?"),
       "5bdcc146bf60754e6a042426089575c75a003f089d2739839dec58b964ec3843",
-    );
+    ],
+    [
+      "4",
+      String.fromCharCode(...Array.from({ length: 25 }, (_, i) => i + 1)),
+      new Uint8Array(50).fill(0xcd),
+      "82558a389a443c0ea4cc819899f2083a85f0faa3e578f8077a2e3ff46729665b",
+    ],
+  ])("are HMAC-SHA256: test case %s of RFC 4231", async (_, key, data, digest) => {
+    const signer = await MessageSigner.create(key);
+    expect(await signer.sign([data])).toBe(digest);
+    expect(await signer.sign([data.slice(0, 3), data.slice(3, 3), data.slice(3)])).toBe(digest);
   });
 
   test("of another key are not trusted", async () => {

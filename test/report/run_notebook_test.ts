@@ -50,10 +50,14 @@ describe("every output is kept", () => {
       expect(outputs(executed, 1).map(text).join("")).toBe(
         Array.from({ length: 200 }, (_, i) => `line ${i}\n`).join(""),
       );
-      expect(text(outputs(executed, 2).at(-1)!)).toContain("42");
+      expect(outputs(executed, 2).map(text)).toEqual([expect.stringContaining("42")]);
       const mixed = outputs(executed, 3).map(text);
-      expect(mixed.filter((t) => /^d\d+$/.test(t)).length).toBe(60);
-      expect(mixed.join("").match(/^\d+$/gm)?.length).toBe(200);
+      expect(mixed.filter((t) => /^d\d+$/.test(t))).toEqual(
+        Array.from({ length: 60 }, (_, i) => `d${i}`),
+      );
+      expect(mixed.slice(0, -1).join("").replaceAll(/d\d+/g, "")).toBe(
+        Array.from({ length: 200 }, (_, i) => `${i}\n`).join(""),
+      );
       expect(mixed.at(-1)).toContain("43");
     }
   });
@@ -95,11 +99,33 @@ describe("what stops a notebook", () => {
     const error = await runNotebook(path).catch((e) => e);
     expect(error).toBeInstanceOf(NotebookCellError);
     expect(error.cell).toBe(3);
+    expect([error.ename, error.evalue]).toEqual(["RangeError", "no good: 7"]);
+    expect(error.traceback[0]).toBe("RangeError: no good: 7");
     expect(error.message).toContain("RangeError: no good: 7");
     expect(error.message).toContain("| throw new RangeError");
     expect(text(outputs(error.partial, 1)[0])).toBe("before\n");
     expect(outputs(error.partial, 2)[0].output_type).toBe("error");
     expect(outputs(error.partial, 3)).toEqual([]);
+  });
+
+  test.each([
+    ["asks for input", `prompt("name?")`, /asks for input \("name\?"\).*write the value/],
+    ["does not compile", `const = 5`, /does not compile.*syntax error/],
+    [
+      "broadcasts what no notebook can hold",
+      `await Deno.jupyter.broadcast("display_data", { metadata: {} })`,
+      /display_data was broadcast with undefined as its data/,
+    ],
+    [
+      "takes away the way to follow its outputs",
+      `Deno.jupyter.broadcast = () => { throw new TypeError("mine"); };`,
+      /TypeError: mine/,
+    ],
+  ])("a cell that %s", async (_, source, message) => {
+    const path = await written([source]);
+    const error = await runNotebook(path).catch((e) => e);
+    expect(error).toBeInstanceOf(NotebookCellError);
+    expect(error.message).toMatch(message);
   });
 
   test("a cell that runs too long", async () => {
@@ -111,10 +137,19 @@ describe("what stops a notebook", () => {
 
   test("a kernel that ends by itself", async () => {
     const path = await written([`console.log(1); Deno.exit(3);`]);
-    await expect(runNotebook(path)).rejects.toBeInstanceOf(KernelError);
+    const error = await runNotebook(path).catch((e) => e);
+    expect(error).toBeInstanceOf(KernelError);
+    expect(error.message).toMatch(/ended by itself \(exit code 3\)[^]*\| console\.log/);
   });
 
-  test("an abort", async () => {
+  test("an abort while the kernel starts", async () => {
+    const path = await written([`1`]);
+    const signal = AbortSignal.timeout(1);
+    const error = await runNotebook(path, { signal }).catch((e) => e);
+    expect(error.name).toBe("TimeoutError");
+  });
+
+  test("an abort while a cell runs", async () => {
     const stop = new AbortController();
     const path = await written([`await new Promise((resolve) => setTimeout(resolve, 60_000));`]);
     const progress = { cellStarted: () => setTimeout(() => stop.abort(), 50), finished() {} };
@@ -137,8 +172,39 @@ test("progress is told cell by cell", async () => {
   await runNotebook(path, {
     progress: {
       cellStarted: (index, total, source) => told.push([index, total, source]),
+      cellDone: (index, total) => told.push([index, total, "done"]),
       finished: () => told.push("finished"),
     },
   });
-  expect(told).toEqual([[0, 2, "1"], [1, 2, "2"], "finished"]);
+  expect(told).toEqual([
+    ...[[0, 2, "1"], [0, 2, "done"]],
+    ...[[1, 2, "2"], [1, 2, "done"]],
+    "finished",
+  ]);
+  const wrong = { cellStarted: 1 } as never;
+  await expect(runNotebook(path, { progress: wrong })).rejects.toThrow(
+    /cellStarted of option "progress"/,
+  );
 });
+
+test.skipIf(Deno.build.os !== "linux")(
+  "no process and no file of the kernel is left, whether the notebook ends or is stopped",
+  async () => {
+    for (const last of ["1", "throw new RangeError('no')", "Deno.exit(1)", "while (true) {}"]) {
+      const path = await written([
+        `await Deno.writeTextFile("kernel.txt", Deno.pid + " " + Deno.readTextFileSync("/proc/self/cmdline"))`,
+        last,
+      ]);
+      await runNotebook(path, { cellTimeout: 2 }).catch(() => {});
+      const told = await Deno.readTextFile(path.replace("made.ipynb", "kernel.txt"));
+      const pid = told.split(" ")[0];
+      const connection = told.split("\0").find((word) => word.endsWith("connection.json"))!;
+      const { NotFound } = Deno.errors;
+      await expect(Deno.stat(`/proc/${pid}`)).rejects.toBeInstanceOf(NotFound);
+      await expect(Deno.stat(connection.replace("/connection.json", ""))).rejects
+        .toBeInstanceOf(NotFound);
+      await dispose?.();
+      dispose = undefined;
+    }
+  },
+);
