@@ -9,7 +9,7 @@ export async function loadEquationRenderer(): Promise<EquationRenderer> {
   const { default: temml } = await import("temml");
   return (latex, display) => {
     try {
-      return temml.renderToString(latex, { displayMode: display, xml: false });
+      return temml.renderToString(latex, { displayMode: display, throwOnError: true });
     } catch (error) {
       const why = error instanceof Error ? error.message : String(error);
       return `<code class="bad-equation" title="${escapeHtml(why)}">${escapeHtml(latex)}</code>`;

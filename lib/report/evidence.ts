@@ -1,10 +1,12 @@
 import type { Caution } from "../quantity/caution.ts";
-import { EVIDENCE_MEDIA_TYPE, type EvidenceBundle, type Source } from "../quantity/result.ts";
+import { EVIDENCE_MEDIA_TYPE, type Source } from "../quantity/result.ts";
+import { executionCautions } from "./execution_cautions.ts";
 import type { Notebook } from "./notebook.ts";
+import { readEvidence } from "./read_evidence.ts";
 
 /** What the results of a notebook tell about themselves, gathered for the front of a report. */
 export interface Evidence {
-  /** Cautions, each once, with the first cell that raised it. */
+  /** Cautions, each once, with the first cell that raised it; the serious ones first. */
   readonly cautions: readonly (Caution & { readonly cell: number })[];
   /** Files that were read, each once. */
   readonly sources: readonly Source[];
@@ -23,26 +25,33 @@ export interface Evidence {
 
 const ORDER = { serious: 0, caution: 1, note: 2 } as const;
 
-/** Gathers the evidence that results carry in a notebook's outputs.
+/** Gathers the evidence that results carry in a notebook's outputs, and what its execution says against them.
  *
- * @param notebook an executed notebook */
+ * @param notebook an executed notebook
+ * @throws {TypeError} or {RangeError} if an output claims to be evidence and is not */
 export function collectEvidence(notebook: Notebook): Evidence {
   const found = notebook.cells.flatMap((cell, i) =>
     cell.cell_type !== "code" ? [] : cell.outputs.flatMap((output) => {
       if (output.output_type !== "display_data" && output.output_type !== "execute_result") {
         return [];
       }
-      const bundle = output.data[EVIDENCE_MEDIA_TYPE] as EvidenceBundle | undefined;
-      return bundle ? [{ cell: i + 1, bundle }] : [];
+      const raw = output.data[EVIDENCE_MEDIA_TYPE];
+      return raw === undefined ? [] : [{ cell: i + 1, bundle: readEvidence(raw, i + 1) }];
     })
   );
-  const cautions = found.flatMap(({ cell, bundle }) =>
-    (bundle.cautions ?? []).map((caution) => ({ ...caution, cell }))
-  );
+  const cautions = [
+    ...executionCautions(notebook),
+    ...found.flatMap(({ cell, bundle }) =>
+      bundle.cautions.map((caution) => ({ ...caution, cell }))
+    ),
+  ];
   return {
-    cautions: firstOf(cautions, (c) => `${c.code} ${c.message}`)
+    cautions: firstOf(cautions, (c) => JSON.stringify([c.code, c.severity, c.message, c.subject]))
       .toSorted((a, b) => ORDER[a.severity] - ORDER[b.severity]),
-    sources: firstOf(found.flatMap(({ bundle }) => bundle.sources ?? []), (s) => s.name + s.sha256),
+    sources: firstOf(
+      found.flatMap(({ bundle }) => bundle.sources ?? []),
+      (s) => `${s.name} ${s.sha256}`,
+    ),
     seeds: firstOf(
       found.flatMap(({ bundle }) => bundle.seed === undefined ? [] : [bundle.seed]),
       String,

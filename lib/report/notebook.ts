@@ -95,7 +95,22 @@ function readCell(raw: unknown, index: number, name: string): NotebookCell {
       `Cannot read the notebook ${name}: cell ${index + 1} has the type ${JSON.stringify(kind)}`,
     );
   }
-  const id = typeof cell.id === "string" ? cell.id : `cell-${index + 1}`;
+  const id = cell.id === undefined ? `cell-${index + 1}` : cell.id;
+  if (typeof id !== "string" || !/^[a-zA-Z0-9-_]{1,64}$/.test(id)) {
+    throw new SyntaxError(
+      `Cannot read the notebook ${name}: cell ${index + 1} has the id ${
+        JSON.stringify(id)
+      }; expected 1 to 64 ` +
+        `letters, digits, - or _`,
+    );
+  }
+  if (cell.source !== undefined && !isText(cell.source)) {
+    throw new SyntaxError(
+      `Cannot read the notebook ${name}: the source of cell ${
+        index + 1
+      } is neither text nor a list of lines`,
+    );
+  }
   const shared = {
     id,
     metadata: (cell.metadata ?? {}) as Record<string, unknown>,
@@ -114,6 +129,11 @@ function readCell(raw: unknown, index: number, name: string): NotebookCell {
     execution_count: (cell.execution_count ?? null) as number | null,
     outputs: (cell.outputs ?? []) as Output[],
   };
+}
+
+function isText(value: unknown): boolean {
+  return typeof value === "string" ||
+    Array.isArray(value) && value.every((line) => typeof line === "string");
 }
 
 /** A notebook as the text of its file. */

@@ -1,4 +1,4 @@
-import type { Severity } from "../quantity/caution.ts";
+import type { Caution, Severity } from "../quantity/caution.ts";
 import { escapeHtml } from "../quantity/section_html.ts";
 import { cleanHtml } from "./clean_html.ts";
 import { loadEquationRenderer } from "./equation.ts";
@@ -14,7 +14,7 @@ export interface RenderReportOptions {
   title?: string;
   /** Who answers for the report. */
   author?: string;
-  /** When the notebook was executed; now if left out. */
+  /** When the report was generated; now if left out. */
   date?: Date;
   /** Name of the notebook's file. */
   notebookName?: string;
@@ -99,7 +99,10 @@ function renderCells(
         }</code></pre></details>`;
       return `<section class="cell" id="cell-${i + 1}">${folded}${outputs.join("\n")}</section>`;
     }
-    const html = cleanHtml(renderers.markdown(source), undefined);
+    const html = cleanHtml(
+      renderers.markdown(withAttachments(source, cell.attachments)),
+      undefined,
+    );
     return html.replaceAll(/<h([1-6])>([\s\S]*?)<\/h\1>/g, (whole, level, inner) => {
       const text = inner.replaceAll(/<[^>]*>/g, "");
       if (level === "1" && (title === undefined || title === plainText(text))) {
@@ -115,6 +118,21 @@ function renderCells(
   return { title: title ?? "Report", body: parts.join("\n"), headings };
 }
 
+/** Markdown with the pictures that are attached to its cell put in as data. */
+function withAttachments(source: string, attachments: unknown): string {
+  const files = Object.entries((attachments ?? {}) as Record<string, Record<string, unknown>>);
+  return files.reduce((text, [name, bundle]) => {
+    const [type, data] = Object.entries(bundle).find(([key]) => key.startsWith("image/")) ?? [];
+    if (type === undefined) return text;
+    const bytes = joinText(data as string).replaceAll(/\s/g, "");
+    return [name, encodeURIComponent(name)].reduce(
+      (rest, written) =>
+        rest.replaceAll(`attachment:${written}`, () => `data:${type};base64,${bytes}`),
+      text,
+    );
+  }, source);
+}
+
 function plainText(html: string): string {
   return html.replaceAll("&lt;", "<").replaceAll("&gt;", ">").replaceAll("&quot;", '"')
     .replaceAll("&amp;", "&").trim();
@@ -124,7 +142,7 @@ function facts(read: { author?: string; date?: Date; notebookName?: string }): s
   const date = (read.date ?? new Date()).toISOString().slice(0, 16).replace("T", " ") + " UTC";
   const rows = [
     ...(read.author ? [["Author", read.author]] : []),
-    ["Executed", date],
+    ["Generated", date],
     ...(read.notebookName ? [["Notebook", read.notebookName]] : []),
   ];
   return `<dl class="facts">${
@@ -146,10 +164,15 @@ function cautionList(evidence: Evidence): string {
   const list = evidence.cautions.map((caution) =>
     `<p class="caution ${caution.severity}"><span class="severity">${
       SEVERITY_WORDS[caution.severity]
-    }:</span> ${escapeHtml(caution.message)} <a href="#cell-${caution.cell}">(where)</a></p>`
+    }:</span> ${escapeHtml(cautionText(caution))} <a href="#cell-${caution.cell}">(where)</a></p>`
   );
   const none = `<p>No result of this notebook raised a caution.</p>`;
   return `<h2>Cautions</h2>${list.length > 0 ? list.join("\n") : none}`;
+}
+
+/** The message, with what it is about if it does not say so itself. */
+function cautionText({ message, subject }: Caution): string {
+  return subject === undefined || message.includes(subject) ? message : `${subject}: ${message}`;
 }
 
 function contents(headings: RenderedCells["headings"]): string {
@@ -166,12 +189,10 @@ function provenance(evidence: Evidence, versions: Readonly<Record<string, string
     }</code></td></tr>`
   );
   const table = files.length === 0
-    ? `<p>No input file was read.</p>`
+    ? `<p>No result of this notebook names an input file.</p>`
     : `<table><caption>Input files</caption><thead><tr><th scope="col">file</th><th scope="col">bytes</th>` +
       `<th scope="col">SHA-256</th></tr></thead><tbody>${files.join("")}</tbody></table>`;
-  const seed = evidence.seeds.length > 0
-    ? evidence.seeds.join(", ")
-    : "no random numbers were used";
+  const seed = evidence.seeds.length > 0 ? evidence.seeds.join(", ") : "no result names one";
   const rows = [["Seed", seed], ...Object.entries(versions)];
   return `<h2>Where this comes from</h2>${table}<dl class="facts">${
     rows.map(([name, value]) => `<dt>${escapeHtml(name)}</dt><dd>${escapeHtml(value)}</dd>`).join(

@@ -42,6 +42,7 @@ pre.error { border: 0.16rem solid var(--ink); }
 math { font-size: 1.1em; } .equation { margin: 0.5rem 0; overflow-x: auto; }
 math[display="block"] { margin: 0.4rem 0; text-align: left; }
 nav ol { margin: 0.3rem 0; padding-left: 1.4rem; }
+.left-out { border: 1px dashed var(--faint); padding: 0 0.4rem; font-size: 0.85rem; color: var(--faint); }
 .bad-equation { border-bottom: 2px dotted var(--ink); }
 @page { size: A4; margin: 18mm 16mm; }
 @media print {

@@ -16,7 +16,11 @@ function code(source: string, ...data: Record<string, unknown>[]): NotebookCell 
 }
 
 function notebook(...cells: NotebookCell[]): Notebook {
-  return { cells, metadata: {}, nbformat: 4, nbformat_minor: 5 };
+  let count = 0;
+  const executed = cells.map((cell) =>
+    cell.cell_type === "code" ? { ...cell, execution_count: ++count } : cell
+  );
+  return { cells: executed, metadata: {}, nbformat: 4, nbformat_minor: 5 };
 }
 
 async function page(
@@ -87,9 +91,18 @@ describe("equations become MathML", () => {
     expect(html).toContain("$5 or $6");
   });
 
-  test("LaTeX that cannot be read stays visible", async () => {
-    const { document } = await page([markdown("$\\frac{$")]);
-    expect(document.querySelector("code.bad-equation")?.textContent).toBe("\\frac{");
+  test.each(["\\frac{", "\\unknown{x}"])(
+    "LaTeX that cannot be read stays visible: %s",
+    async (latex) => {
+      const { document } = await page([markdown(`$${latex}$`)]);
+      expect(document.querySelector("code.bad-equation")?.textContent).toBe(latex);
+    },
+  );
+
+  test("text with equations in it, displayed as LaTeX", async () => {
+    const { document } = await page([code("1", { "text/latex": "with $a$ and $b$" })]);
+    expect(document.querySelectorAll("math").length).toBe(2);
+    expect(document.querySelector(".cell")?.textContent).toContain("with");
   });
 });
 
@@ -163,6 +176,59 @@ describe("front matter", () => {
     const data = JSON.parse(document.querySelector("#ratebook-results")!.textContent!);
     expect(data.cautions[0].code).toBe("s");
   });
+});
+
+describe("outputs", () => {
+  const shown = async (data: Record<string, unknown>) =>
+    (await page([code("1", data)])).document.querySelector(".cell")!;
+
+  test("are shown in the richest form, JSON only where there is no other", async () => {
+    const all = {
+      "text/html": "<b>html</b>",
+      "image/svg+xml": "<svg></svg>",
+      "image/png": "AA==",
+      "text/latex": "x",
+      "text/markdown": "*md*",
+      "text/plain": "plain",
+      "application/json": { a: 1 },
+    };
+    const found = [
+      "b",
+      "svg",
+      "img[src='data:image/png;base64,AA==']",
+      "math",
+      "em",
+      "pre.value",
+      "pre.value",
+    ];
+    const data: Record<string, unknown> = { ...all };
+    for (const [i, type] of Object.keys(all).entries()) {
+      const cell = await shown(data);
+      expect(cell.querySelector(found[i]), type).not.toBeNull();
+      expect(cell.textContent.includes('"a": 1')).toBe(type === "application/json");
+      delete data[type];
+    }
+  });
+
+  test("that no page without script can show are named", async () => {
+    expect((await shown({ "application/x-chart": {} })).textContent).toContain(
+      "application/x-chart",
+    );
+  });
+
+  test("that are data for the report only show nothing", async () => {
+    const cell = await shown({ [EVIDENCE_MEDIA_TYPE]: { kind: "k", title: "t", cautions: [] } });
+    expect([...cell.children].map((e) => e.localName)).toEqual(["details"]);
+  });
+});
+
+test("a picture attached to a Markdown cell is in the page", async () => {
+  const cell = {
+    ...markdown("![setup](attachment:set%20up.png)"),
+    attachments: { "set up.png": { "image/png": "AA==" } },
+  } as NotebookCell;
+  const { document } = await page([cell]);
+  expect(document.querySelector("img")?.getAttribute("src")).toBe("data:image/png;base64,AA==");
 });
 
 test("figures keep their ids apart", async () => {

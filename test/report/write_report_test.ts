@@ -23,12 +23,29 @@ test("a cell that throws leaves nothing under the report's name, and an earlier 
     good.path,
     (await Deno.readTextFile(good.path)).replace("1 + 1", "throw new Error('stop')"),
   );
-  await expect(writeReport(good.path, { folder })).rejects.toBeInstanceOf(NotebookCellError);
+  const error = await writeReport(good.path, { folder }).catch((e) => e);
+  expect(error).toBeInstanceOf(NotebookCellError);
+  expect(error.message).toContain(
+    `The report ${written.html} is of an earlier run and was left as it was`,
+  );
   expect(await Deno.readTextFile(written.html)).toBe(before);
   expect([...Deno.readDirSync(folder)].length).toBe(2);
   const fresh = `${good.folder}/fresh`;
-  await expect(writeReport(good.path, { folder: fresh })).rejects.toThrow(/Cell 2/);
+  const alone = await writeReport(good.path, { folder: fresh }).catch((e) => e);
+  expect(alone.message).toMatch(/Cell 2/);
+  expect(alone.message).not.toMatch(/earlier/);
   await expect(Deno.stat(fresh)).rejects.toBeInstanceOf(Deno.errors.NotFound);
+});
+
+test("the notebook itself is never written over", async () => {
+  const file = await notebookFile(["1 + 1"]);
+  dispose = file.dispose;
+  const before = await Deno.readTextFile(file.path);
+  await expect(writeReport(file.path, { folder: file.folder })).rejects.toThrow(
+    /name another folder/,
+  );
+  expect(await Deno.readTextFile(file.path)).toBe(before);
+  expect([...Deno.readDirSync(file.folder)].length).toBe(1);
 });
 
 const PYTHON = "/usr/bin/python3";
