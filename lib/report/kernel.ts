@@ -1,3 +1,4 @@
+import { dirname } from "node:path";
 import { type ConnectionFile, writeConnectionFile } from "./connection_file.ts";
 import { deadline } from "./deadline.ts";
 import { type JupyterMessage, MessageSigner, request } from "./jupyter_message.ts";
@@ -124,10 +125,13 @@ export class Kernel {
   }
 
   /** Sends code to be executed. */
-  execute(code: string, options: { storeHistory: boolean }): Promise<Exchange> {
+  execute(
+    code: string,
+    options: { storeHistory: boolean; silent?: boolean },
+  ): Promise<Exchange> {
     return this.#ask("execute_request", {
       code,
-      silent: false,
+      silent: options.silent ?? false,
       store_history: options.storeHistory,
       user_expressions: {},
       // Allowed, so that a request for input is seen and can be refused; else the code would go on with null.
@@ -174,6 +178,8 @@ export class Kernel {
       await (await this.#ask("kernel_info_request", {})).reply;
       got = await Promise.race([heard.then(() => true), delay(50).then(() => false)]);
     }
+    const watch = watchCode(this.#connection.path);
+    await (await this.execute(watch, { storeHistory: false, silent: true })).reply;
   }
 
   async #reach(port: number, type: ZmtpSocketType, identity?: string): Promise<ZmtpSocket> {
@@ -231,6 +237,19 @@ export class Kernel {
       this.#stderr = (this.#stderr + text).slice(-4000);
     }
   }
+}
+
+/** Code by which a kernel ends itself, and removes its connection file, when the process that started it is
+ * gone without a word (killed, or a terminal closed); it would live on for ever otherwise. */
+function watchCode(connectionFile: string): string {
+  return `Deno.unrefTimer(setInterval(() => {
+    if (Deno.ppid === ${Deno.pid}) return;
+    try {
+      Deno.removeSync(${JSON.stringify(dirname(connectionFile))}, { recursive: true });
+    } finally {
+      Deno.exit(1);
+    }
+  }, 500));`;
 }
 
 function delay(ms: number): Promise<void> {

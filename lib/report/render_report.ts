@@ -12,7 +12,18 @@ const PAGE: string = "./report_page.ts";
  *
  * @param notebook an executed notebook
  * @param options title, author, date, versions
- * @returns the page */
+ * @returns the page
+ * @throws {TypeError} on an option that does not exist, or an output that claims to be evidence and is not
+ *
+ * @example
+ * ```ts
+ * import { ok } from "node:assert";
+ * import { renderReport } from "ratebook";
+ *
+ * const cell = { cell_type: "markdown", id: "a", metadata: {}, source: "# How fast?\n\n$v = k[A]$" } as const;
+ * const page = await renderReport({ cells: [cell], metadata: {}, nbformat: 4, nbformat_minor: 5 });
+ * ok(page.includes("<h1>How fast?</h1>") && page.includes("<math>") && !page.includes("<script"));
+ * ``` */
 export async function renderReport(
   notebook: Notebook,
   options: RenderReportOptions = {},

@@ -39,18 +39,23 @@ details.code summary { cursor: pointer; color: var(--faint); }
 pre { background: var(--panel); padding: 0.6rem 0.8rem; overflow-x: auto; white-space: pre-wrap;
   font: 0.82rem/1.45 "DejaVu Sans Mono", Menlo, Consolas, monospace; margin: 0.4rem 0 0.8rem; }
 pre.error { border: 0.16rem solid var(--ink); }
-math { font-size: 1.1em; } .equation { margin: 0.5rem 0; overflow-x: auto; }
+math { font-size: 1.1em; font-family: "STIX Two Math", "Cambria Math", "Latin Modern Math",
+  "DejaVu Math TeX Gyre", math; } .equation { margin: 0.5rem 0; overflow-x: auto; }
 math[display="block"] { margin: 0.4rem 0; text-align: left; }
+nav { border-bottom: 1px solid var(--rule); margin-bottom: 1.4rem; padding-bottom: 0.6rem; }
 nav ol { margin: 0.3rem 0; padding-left: 1.4rem; }
 .left-out { border: 1px dashed var(--faint); padding: 0 0.4rem; font-size: 0.85rem; color: var(--faint); }
 .bad-equation { border-bottom: 2px dotted var(--ink); }
+.bad-equation::before { content: "not typeset: "; font-style: italic; color: var(--faint); }
 @page { size: A4; margin: 18mm 16mm; }
 @media print {
   :root { --ink: #000; --paper: #fff; --faint: #444; --rule: #999; --panel: #f4f4f4; }
   body { max-width: none; padding: 0; font-size: 10.5pt; }
   h2, h3, .result-title { break-after: avoid; }
   figure, tr, .caution { break-inside: avoid; }
-  table { display: table; width: 100%; } pre { white-space: pre-wrap; }
+  table { display: table; } thead { display: table-header-group; }
+  pre { padding: 0.2rem 0.8rem; border-left: 2px solid var(--rule); } pre.error { padding: 0.6rem 0.8rem; }
+  .caution a { display: none; }
   details.code:not([open]) { display: none; }
 }
 `;

@@ -48,7 +48,16 @@ const CELL_TIMEOUT = 600;
  * @returns the executed notebook
  * @throws {NotebookCellError} if a cell throws, runs too long, or asks for input
  * @throws {KernelError} if the kernel does not start, or ends by itself
- * @throws {SyntaxError} if the file is no notebook */
+ * @throws {SyntaxError} if the file is no notebook
+ *
+ * @example
+ * ```ts
+ * import { ok } from "node:assert";
+ * import { runNotebook } from "ratebook";
+ *
+ * const executed = await runNotebook("notebooks/rate_law_and_activation_energy.ipynb");
+ * ok(executed.cells.every((cell) => cell.cell_type !== "code" || cell.execution_count !== null));
+ * ``` */
 export async function runNotebook(
   path: string | URL,
   options: RunNotebookOptions = {},

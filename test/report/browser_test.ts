@@ -1,4 +1,7 @@
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { cleanHtml } from "../../lib/report/clean_html.ts";
+import type { Notebook, NotebookCell } from "../../lib/report/notebook.ts";
+import { renderReport } from "../../lib/report/render_report.ts";
 import { writeReport, type WrittenReport } from "../../lib/report/write_report.ts";
 
 const CHROMIUM = "/usr/bin/chromium";
@@ -77,5 +80,87 @@ describe.skipIf(!hasChromium)("the demo's report in Chromium", () => {
   test("prints as pages", async () => {
     const pdf = await page.pdf({ format: "A4" });
     expect(new TextDecoder("latin1").decode(pdf.slice(0, 5))).toBe("%PDF-");
+  });
+});
+
+/** Pieces of HTML that run or load something in a browser, some by being read differently by it than by the
+ * parser that cleans them. */
+const HOSTILE = [
+  `<script>window.ran = 1</script>`,
+  `<img src="https://example.org/a.png" onerror="window.ran = 1">`,
+  `<svg onload="window.ran = 1"><script>window.ran = 1</script></svg>`,
+  `<!--><img src=x onerror="window.ran = 1">-->`,
+  `<!--a--!><img src=x onerror="window.ran = 1">-->`,
+  `<noscript><p title="</noscript><img src=x onerror='window.ran = 1'>"></noscript>`,
+  `<textarea><p title="</textarea><img src=x onerror='window.ran = 1'>"></textarea>`,
+  `<xmp><p title="</xmp><img src=x onerror='window.ran = 1'>"></xmp>`,
+  `<style><p title="</style><img src=x onerror='window.ran = 1'>"></style>`,
+  `<svg><style><p title="</style><img src=x onerror='window.ran = 1'>"></style></svg>`,
+  `<svg></p><style><a title="</style><img src=x onerror='window.ran = 1'>">`,
+  `<math><mtext><table><mglyph><style><!--</style><img title="--&gt;&lt;img src=x onerror=window.ran=1&gt;">`,
+  `<template><img src=x onerror="window.ran = 1"></template>`,
+  `<iframe srcdoc="<script>parent.ran = 1</script>"></iframe>`,
+  `<object data="data:text/html,<script>parent.ran = 1</script>"></object>`,
+  `<link rel="stylesheet" href="https://example.org/a.css"><style>@import "https://example.org/b.css";</style>`,
+  `<p style="background:url(https://example.org/c.png)">x</p>`,
+  `<svg><rect width="9" height="9" fill="url(https://example.org/d.svg#a)"/><use href="https://example.org/e.svg#a"/></svg>`,
+  `<video src="https://example.org/f.mp4" poster="https://example.org/g.png"></video>`,
+  `<meta http-equiv="refresh" content="0;url=https://example.org/h">`,
+];
+
+function displayed(html: string, i: number): NotebookCell {
+  return {
+    cell_type: "code",
+    id: `c${i}`,
+    metadata: {},
+    source: "1",
+    execution_count: i + 1,
+    outputs: [{ output_type: "display_data", data: { "text/html": html }, metadata: {} }],
+  };
+}
+
+describe.skipIf(!hasChromium)("hostile outputs in Chromium", () => {
+  // deno-lint-ignore no-explicit-any
+  let browser: any, folder: string;
+  beforeAll(async () => {
+    folder = await Deno.makeTempDir();
+    const { chromium } = await import("playwright-core");
+    browser = await chromium.launch({ executablePath: CHROMIUM, args: FLAGS });
+  });
+  afterAll(async () => {
+    await browser?.close();
+    await Deno.remove(folder, { recursive: true });
+  });
+
+  /** What a page asks for beside itself, what it complains of, and whether something in it ran. */
+  async function opened(html: string): Promise<{ asked: string[]; told: string[]; ran: boolean }> {
+    const file = `${folder}/page.html`;
+    await Deno.writeTextFile(file, html);
+    const page = await browser.newPage();
+    const asked: string[] = [];
+    const told: string[] = [];
+    page.on("request", (request: { url(): string }) => asked.push(request.url()));
+    page.on("console", (message: { text(): string }) => told.push(message.text()));
+    await page.route("https://**", (route: { abort(): void }) => route.abort());
+    await page.goto(`file://${file}`);
+    const ran = await page.evaluate("window.ran === 1");
+    await page.close();
+    return { asked: asked.filter((url) => url !== `file://${file}`), told, ran };
+  }
+
+  test("do run and load as they are: the probe sees it", async () => {
+    const { asked, ran } = await opened(`<!doctype html><body>${HOSTILE[0]}${HOSTILE[1]}`);
+    expect([asked, ran]).toEqual([["https://example.org/a.png"], true]);
+  });
+
+  test.each(HOSTILE)("neither run nor load once cleaned, without any policy: %s", async (html) => {
+    const page = `<!doctype html><body>${cleanHtml(html, undefined)}`;
+    expect(await opened(page)).toEqual({ asked: [], told: [], ran: false });
+  });
+
+  test("neither run nor load in a report, and the policy has nothing to stop", async () => {
+    const cells = HOSTILE.map(displayed);
+    const notebook: Notebook = { cells, metadata: {}, nbformat: 4, nbformat_minor: 5 };
+    expect(await opened(await renderReport(notebook))).toEqual({ asked: [], told: [], ran: false });
   });
 });

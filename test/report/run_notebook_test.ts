@@ -208,3 +208,47 @@ test.skipIf(Deno.build.os !== "linux")(
     }
   },
 );
+
+test.skipIf(Deno.build.os !== "linux")(
+  "a kernel whose report is killed ends by itself and removes its file",
+  async () => {
+    const path = await written([
+      `await Deno.writeTextFile("kernel.txt", Deno.pid + " " + Deno.readTextFileSync("/proc/self/cmdline"))`,
+      `await new Promise((resolve) => setTimeout(resolve, 60_000))`,
+    ]);
+    const library = new URL("../../lib/report/run_notebook.ts", import.meta.url);
+    const script = `import { runNotebook } from "${library}"; await runNotebook("${path}");`;
+    const report = new Deno.Command(Deno.execPath(), {
+      args: [
+        "run",
+        "-A",
+        "--ext=ts",
+        "--config",
+        new URL("../../deno.json", import.meta.url).pathname,
+        "-",
+      ],
+      stdin: "piped",
+      stdout: "null",
+      stderr: "null",
+    }).spawn();
+    const writer = report.stdin.getWriter();
+    await writer.write(new TextEncoder().encode(script));
+    await writer.close();
+    const read = (file: string) => Deno.readTextFile(file).catch(() => "");
+    const note = path.replace("made.ipynb", "kernel.txt");
+    await until(async () => (await read(note)).includes("connection.json"));
+    const told = await read(note);
+    report.kill("SIGKILL");
+    await report.status;
+    const connection = told.split("\0").find((word) => word.endsWith("connection.json"))!;
+    await until(async () => await read(connection) === "");
+    // An ended process may stay listed, as a zombie, until someone asks how it ended.
+    await until(async () => /^$|\) Z /.test(await read(`/proc/${told.split(" ")[0]}/stat`)));
+  },
+  30_000,
+);
+
+/** Waits until something holds; the test's own time limit ends the wait. */
+async function until(holds: () => Promise<boolean>): Promise<void> {
+  while (!await holds()) await new Promise((resolve) => setTimeout(resolve, 50));
+}
