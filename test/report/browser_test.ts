@@ -97,15 +97,12 @@ const HOSTILE = [
   `<style><p title="</style><img src=x onerror='window.ran = 1'>"></style>`,
   `<svg><style><p title="</style><img src=x onerror='window.ran = 1'>"></style></svg>`,
   `<svg></p><style><a title="</style><img src=x onerror='window.ran = 1'>">`,
-  `<math><mtext><table><mglyph><style><!--</style><img title="--&gt;&lt;img src=x onerror=window.ran=1&gt;">`,
-  `<template><img src=x onerror="window.ran = 1"></template>`,
   `<iframe srcdoc="<script>parent.ran = 1</script>"></iframe>`,
-  `<object data="data:text/html,<script>parent.ran = 1</script>"></object>`,
+  `<object data="https://example.org/h.html"></object><embed src="https://example.org/i.html">`,
   `<link rel="stylesheet" href="https://example.org/a.css"><style>@import "https://example.org/b.css";</style>`,
   `<p style="background:url(https://example.org/c.png)">x</p>`,
   `<svg><rect width="9" height="9" fill="url(https://example.org/d.svg#a)"/><use href="https://example.org/e.svg#a"/></svg>`,
   `<video src="https://example.org/f.mp4" poster="https://example.org/g.png"></video>`,
-  `<meta http-equiv="refresh" content="0;url=https://example.org/h">`,
 ];
 
 function displayed(html: string, i: number): NotebookCell {
@@ -121,11 +118,17 @@ function displayed(html: string, i: number): NotebookCell {
 
 describe.skipIf(!hasChromium)("hostile outputs in Chromium", () => {
   // deno-lint-ignore no-explicit-any
-  let browser: any, folder: string;
+  let browser: any, page: any, folder: string;
+  let asked: string[] = [];
+  let told: string[] = [];
   beforeAll(async () => {
     folder = await Deno.makeTempDir();
     const { chromium } = await import("playwright-core");
     browser = await chromium.launch({ executablePath: CHROMIUM, args: FLAGS });
+    page = await browser.newPage();
+    page.on("request", (request: { url(): string }) => asked.push(request.url()));
+    page.on("console", (message: { text(): string }) => told.push(message.text()));
+    await page.route("https://**", (route: { abort(): void }) => route.abort());
   });
   afterAll(async () => {
     await browser?.close();
@@ -136,27 +139,22 @@ describe.skipIf(!hasChromium)("hostile outputs in Chromium", () => {
   async function opened(html: string): Promise<{ asked: string[]; told: string[]; ran: boolean }> {
     const file = `${folder}/page.html`;
     await Deno.writeTextFile(file, html);
-    const page = await browser.newPage();
-    const asked: string[] = [];
-    const told: string[] = [];
-    page.on("request", (request: { url(): string }) => asked.push(request.url()));
-    page.on("console", (message: { text(): string }) => told.push(message.text()));
-    await page.route("https://**", (route: { abort(): void }) => route.abort());
-    await page.goto(`file://${file}`);
+    asked = [];
+    told = [];
+    await page.goto(`file://${file}`, { waitUntil: "load" });
     const ran = await page.evaluate("window.ran === 1");
-    await page.close();
     return { asked: asked.filter((url) => url !== `file://${file}`), told, ran };
   }
 
-  test("do run and load as they are: the probe sees it", async () => {
-    const { asked, ran } = await opened(`<!doctype html><body>${HOSTILE[0]}${HOSTILE[1]}`);
-    expect([asked, ran]).toEqual([["https://example.org/a.png"], true]);
-  });
-
-  test.each(HOSTILE)("neither run nor load once cleaned, without any policy: %s", async (html) => {
-    const page = `<!doctype html><body>${cleanHtml(html, undefined)}`;
-    expect(await opened(page)).toEqual({ asked: [], told: [], ran: false });
-  });
+  test.each(HOSTILE)(
+    "run or load as they are, and neither once cleaned, without any policy: %s",
+    async (html) => {
+      const raw = await opened(`<!doctype html><body>${html}`);
+      expect(raw.ran || raw.asked.length > 0).toBe(true);
+      const cleaned = await opened(`<!doctype html><body>${cleanHtml(html, undefined)}`);
+      expect(cleaned).toEqual({ asked: [], told: [], ran: false });
+    },
+  );
 
   test("neither run nor load in a report, and the policy has nothing to stop", async () => {
     const cells = HOSTILE.map(displayed);

@@ -48,6 +48,8 @@ describe("what runs or loads goes", () => {
     `<!--><img src=x onerror=y>-->`,
     `<noscript><p title="</noscript><img src=x onerror=y>"></noscript>`,
     `<xmp><img src=x onerror=y></xmp>`,
+    `<meta http-equiv="refresh" content="0;url=http://example.org">`,
+    `<object data="data:text/html,<p onerror=y>"></object>`,
     `<a href="&#1;javascript:y">x</a>`,
     `<svg><a xlink:href="javascript:y"><set attributeName="href" to="javascript:y"/></a></svg>`,
     `<svg><animateTransform attributeName="href" to="javascript:y"/></svg>`,
